@@ -5,27 +5,10 @@
 #define MESH_MESH_H
 
 #include "core/core.h"
+#include "element/tube.h"
 #include "endfix/frame.h"
 #include "endfix/run.h"
 #include "linalg/factor.h"
-
-/* A tube as the engines see it. Local axes: rows of R are x y z in global components. */
-typedef struct MeshTube {
-    int end[2];          /* joints */
-    double L;            /* clear length: between the tube's own ends, m */
-    double joint_length; /* joint to joint, m */
-    double R[3][3];
-    double offset[2][3]; /* tube end minus joint, LOCAL axes, m */
-    bool has_offset;
-    double E, G;
-    EfSection section;
-    double mass_per_length; /* kg/m */
-    double expansion;       /* 1/K */
-    bool shear;             /* shear flexible */
-    unsigned release[2];    /* local masks, as EfTube */
-    double spring[2][EF_DIRECTIONS];
-    bool has_joint_parts;   /* any release or finite spring */
-} MeshTube;
 
 /* Equipment or a spread load: motion of a point from its carriers' motion.
  * One carrier: a rigid arm. Several: the least-squares rigid motion of the carriers' translations. */
@@ -52,13 +35,6 @@ typedef struct Mesh {
     double inertia[3][3]; /* about the centre of mass, kg m2 */
     BlockPattern pattern; /* joints that share a tube or equipment */
 } Mesh;
-
-/* Loads along one tube, global axes, N/m at its from and to ends (linear between), and the axial
- * force its warming would give if it were held (N, compression negative). */
-typedef struct TubeLoad {
-    double from[3], to[3];
-    double warm_force;
-} TubeLoad;
 
 /* A dead force at the end of an arm: it turns with its carriers and so has a second-order stiffness. */
 typedef struct ArmLoad {
