@@ -17,6 +17,7 @@ typedef struct Carrier {
     const int *joint;
     double point[3];       /* where it hangs, global, m */
     double centre[3];      /* mean position of the carriers */
+    double (*arm)[3];      /* [ncarrier] carrier minus centre, m */
     double spread[3][3];   /* inverse of sum [ |r|^2 I - r r' ], r from the centre; several carriers only */
 } Carrier;
 
@@ -79,6 +80,6 @@ void carrier_spread(const Carrier *c, const double force[3], const double moment
 
 /* Rows of the carrier's rotation: theta = sum over its joints H_k u_k (several: u_k translations;
  * one: its own rotation). H is [3][6] for the k-th carrier. */
-void carrier_rotation_row(const Carrier *c, const double (*joint_x)[3], int k, double H[3][6]);
+void carrier_rotation_row(const Carrier *c, int k, double H[3][6]);
 
 #endif
