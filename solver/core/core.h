@@ -57,6 +57,9 @@ void *core_malloc(EfContext *cx, size_t n, size_t size);
 char *keep_text(EfContext *cx, const char *text);
 char *keep_format(EfContext *cx, const char *format, ...) __attribute__((format(printf, 2, 3)));
 
+/* The nearest of n known words, the first among equals; NULL when none is near (a letter wrong in three). */
+const char *nearest_word(const char *word, size_t n, const char *const *known);
+
 /* Records the first failure (later ones are consequences) and returns its status. */
 EfStatus fail(EfContext *cx, EfStatus status, const char *format, ...)
     __attribute__((format(printf, 3, 4)));

@@ -58,12 +58,29 @@ static void test_first_failure_is_kept(void **state)
     ef_close(cx);
 }
 
+static void test_the_nearest_word_is_offered(void **state)
+{
+    (void)state;
+    static const char *const known[] = {"fin gust", "pull-up", "pull-down", "hard landing", "pull-op"};
+    assert_string_equal(nearest_word("pullup", 5, known), "pull-up");
+    assert_string_equal(nearest_word("HARD LADNING", 5, known), "hard landing");
+    assert_string_equal(nearest_word("pull-dwon", 5, known), "pull-down");
+    assert_string_equal(nearest_word("fingusts", 5, known), "fin gust");
+    assert_null(nearest_word("tail wheel", 5, known));
+    assert_null(nearest_word("fin gust", 0, known));
+    char word[200];
+    memset(word, 'q', sizeof word - 1);
+    word[sizeof word - 1] = '\0';
+    assert_null(nearest_word(word, 5, known));
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(test_every_allocation_can_fail),
         cmocka_unit_test(test_rewind_gives_back_zeroed_memory),
         cmocka_unit_test(test_first_failure_is_kept),
+        cmocka_unit_test(test_the_nearest_word_is_offered),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
 }
