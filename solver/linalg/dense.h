@@ -1,0 +1,13 @@
+/* dense.h - small symmetric matrices: eigenvalues, vectors, signs.
+ * SPDX-License-Identifier: GPL-3.0-or-later */
+#ifndef LINALG_DENSE_H
+#define LINALG_DENSE_H
+
+/* Eigenvalues (ascending) and unit eigenvectors of the symmetric a [n][n], which is destroyed. Vector k is row k
+ * of `vectors` [n][n]. Jacobi's method: small values keep their relative accuracy where the matrix gives it. */
+void symmetric_eigen(int n, double *a, double *values, double *vectors);
+
+/* Number of eigenvalues of a [n][n] (n <= 24) below -tolerance x the largest in size; a is kept. */
+int symmetric_negative(int n, const double *a, double tolerance);
+
+#endif
