@@ -1,4 +1,4 @@
-/* dense.c - cyclic Jacobi for small symmetric matrices.
+/* dense.c - eigenvalues of dense symmetric matrices: cyclic Jacobi for small ones, LAPACK for the rest.
  * SPDX-License-Identifier: GPL-3.0-or-later */
 #include "linalg/dense.h"
 
@@ -6,6 +6,10 @@
 #include <math.h>
 #include <stdbool.h>
 #include <string.h>
+
+/* LAPACK, symmetric eigenproblem by divide and conquer. */
+void dsyevd_(const char *job, const char *part, const int *n, double *a, const int *lda, double *w, double *work,
+             const int *lwork, int *iwork, const int *liwork, int *info);
 
 enum { MAX_SMALL = 24, SWEEPS = 60 };
 
@@ -84,4 +88,17 @@ int symmetric_negative(int n, const double *a, double tolerance)
     int negative = 0;
     for (int i = 0; i < n; i++) negative += values[i] < -tolerance * largest;
     return negative;
+}
+
+EfStatus symmetric_eigen_large(EfContext *cx, int n, double *a, double *values)
+{
+    const ArenaMark mark = arena_mark(&cx->tmp);
+    const int lwork = 1 + 6 * n + 2 * n * n, liwork = 3 + 5 * n;
+    double *work;
+    int *iwork, info = 0;
+    ALLOC(cx, tmp, work, lwork);
+    ALLOC(cx, tmp, iwork, liwork);
+    dsyevd_("V", "U", &n, a, &n, values, work, &lwork, iwork, &liwork, &info);
+    arena_rewind(&cx->tmp, mark);
+    return info == 0 ? EF_OK : fail(cx, EF_E_TALLY, "The small eigenproblem of %d unknowns did not converge.", n);
 }

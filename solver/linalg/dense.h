@@ -3,9 +3,14 @@
 #ifndef LINALG_DENSE_H
 #define LINALG_DENSE_H
 
+#include "core/core.h"
+
 /* Eigenvalues (ascending) and unit eigenvectors of the symmetric a [n][n], which is destroyed. Vector k is row k
  * of `vectors` [n][n]. Jacobi's method: small values keep their relative accuracy where the matrix gives it. */
 void symmetric_eigen(int n, double *a, double *values, double *vectors);
+
+/* The same for any n by LAPACK: values ascending, vector k is row k of a on return. */
+EfStatus symmetric_eigen_large(EfContext *cx, int n, double *a, double *values);
 
 /* Number of eigenvalues of a [n][n] (n <= 24) below -tolerance x the largest in size; a is kept. */
 int symmetric_negative(int n, const double *a, double tolerance);
