@@ -40,7 +40,7 @@ EfStatus factor_new(EfContext *cx, const Analysis *analysis, Factor **factor);
 void factor_free(Factor *factor);
 
 /* Factorises. Never fails for an indefinite matrix; a pivot that is exactly zero or not finite gives
- * E_TALLY. May be called again with other values of the same pattern. */
+ * E_TALLY without a message: the caller knows whether to move on. May be called again with other values of the same pattern. */
 EfStatus factor_numeric(EfContext *cx, Factor *factor, const double *value);
 
 int factor_negative(const Factor *factor);  /* negative eigenvalues */
