@@ -37,11 +37,13 @@ static bool values(const double *p, EfSection *s, char *why, size_t size)
     return true;
 }
 
+/* The middle line moved outwards or inwards by half of the wall. */
 static bool outline(const double *p, int loop, double t, double yz[2])
 {
-    const double less = loop == 0 ? 0 : p[2];
-    yz[0] = (p[1] / 2 - less) * cos(2 * PI * t);
-    yz[1] = (p[0] / 2 - less) * sin(2 * PI * t);
+    const double a = (p[0] - p[2]) / 2, b = (p[1] - p[2]) / 2, half = (loop == 0 ? p[2] : -p[2]) / 2;
+    const double c = cos(2 * PI * t), s = sin(2 * PI * t), n = hypot(a * c, b * s);
+    yz[0] = b * c + half * a * c / n;
+    yz[1] = a * s + half * b * s / n;
     return loop < 2;
 }
 
