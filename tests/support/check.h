@@ -14,7 +14,7 @@
 #undef fail /* ours records a failure in a context */
 
 /* Fails unless |got - want| <= tol * |want| is true (so a NaN fails). */
-#define CHECK_REL(got, want, tol) check_near_at((got), (want), (tol) * fabs(want), #got, __FILE__, __LINE__)
+#define CHECK_REL(got, want, tol) check_near_at((got), (want), (tol) * fabs((double)(want)), #got, __FILE__, __LINE__)
 /* Fails unless |got - want| <= tol is true. */
 #define CHECK_ABS(got, want, tol) check_near_at((got), (want), (tol), #got, __FILE__, __LINE__)
 /* Fails with the message of the context unless the call gives EF_OK. */
