@@ -206,7 +206,7 @@ static void hold_idle(const Assembly *a, int j, double D[3][3])
     a->held[j] |= a->idle[j];
 }
 
-static void add_springs(const Assembly *a, int j, double *block)
+static void add_joint_springs(const Assembly *a, int j, double *block)
 {
     for (int s = 0; s < 6; s++) {
         const double k = a->mesh->spring[j][s];
@@ -221,6 +221,11 @@ static void add_springs(const Assembly *a, int j, double *block)
         for (int i = 0; i < 3; i++)
             for (int l = 0; l < 3; l++) block[6 * (3 * p + i) + 3 * p + l] += k * in[i] * in[l];
     }
+}
+
+void assembly_add_springs(const Assembly *a, double *value)
+{
+    for (int j = 0; j < a->nj; j++) add_joint_springs(a, j, value + BLOCK2 * a->mesh->pattern.start[j]);
 }
 
 static void find_places(const Assembly *a, int tube)
@@ -271,7 +276,7 @@ EfStatus assembly_new(EfContext *cx, const Mesh *mesh, Assembly *a)
         set_turns(a, t); /* the rotation axes may have turned */
         assembly_add_tube(a, t, K[t], a->elastic);
     }
-    for (int j = 0; j < a->nj; j++) add_springs(a, j, a->elastic + BLOCK2 * mesh->pattern.start[j]);
+    assembly_add_springs(a, a->elastic);
     arena_rewind(&cx->tmp, mark);
     return factor_analyse(cx, &mesh->pattern, &a->analysis);
 }
@@ -288,4 +293,40 @@ EfStatus assembly_held_with_base(EfContext *cx, const Assembly *a, unsigned mask
     memcpy(*held, a->held, (size_t)a->nj * sizeof **held);
     if (a->base >= 0) (*held)[a->base] |= mask;
     return EF_OK;
+}
+
+/* ---- free bodies ---------------------------------------------------------------------------------------------- */
+
+EfStatus assembly_rigid_rotations(EfContext *cx, const Assembly *a, const unsigned *held, int width, double *r)
+{
+    const ArenaMark mark = arena_mark(&cx->tmp);
+    double *u;
+    ALLOC(cx, tmp, u, 6 * a->nj);
+    const double *o = a->mesh->frame->joint[a->base].x;
+    for (int c = 0; c < 3; c++) {
+        for (int j = 0; j < a->nj; j++) {
+            const double *x = a->mesh->frame->joint[j].x;
+            const double t[3] = {c == 0, c == 1, c == 2}, d[3] = {x[0] - o[0], x[1] - o[1], x[2] - o[2]};
+            const double v[6] = {t[1] * d[2] - t[2] * d[1], t[2] * d[0] - t[0] * d[2], t[0] * d[1] - t[1] * d[0],
+                                 t[0], t[1], t[2]};
+            memcpy(u + 6 * j, v, sizeof v);
+        }
+        assembly_to_axes(a, u, u);
+        assembly_clear_held(a, held, u, 1);
+        for (int i = 0; i < 6 * a->nj; i++) r[i * width + c] = u[i];
+    }
+    arena_rewind(&cx->tmp, mark);
+    return EF_OK;
+}
+
+void assembly_ground_rotation(const Assembly *a, const double axis[3], double *value)
+{
+    double *block = value + BLOCK2 * a->mesh->pattern.start[a->base], own[3];
+    const double *e = a->elastic + BLOCK2 * a->mesh->pattern.start[a->base], s = e[21] + e[28] + e[35];
+    for (int i = 0; i < 3; i++) {
+        const double *row = a->axes[a->base][1][i];
+        own[i] = row[0] * axis[0] + row[1] * axis[1] + row[2] * axis[2];
+    }
+    for (int i = 0; i < 3; i++)
+        for (int l = 0; l < 3; l++) block[6 * (3 + i) + 3 + l] += s * own[i] * own[l];
 }

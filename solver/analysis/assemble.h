@@ -35,6 +35,16 @@ void assembly_add_tube(const Assembly *a, int tube, double S[END12][END12], doub
 /* value += factor x second-order stiffness of forces on arms (equipment). */
 void assembly_add_arms(const Assembly *a, const Loads *loads, double factor, double *value);
 
+/* value += springs of the supports. */
+void assembly_add_springs(const Assembly *a, double *value);
+
+/* Rigid rotations of a free body about its base joint, in the joints' axes: r [nj][6][width], three columns.
+ * Held directions are zero. */
+EfStatus assembly_rigid_rotations(EfContext *cx, const Assembly *a, const unsigned *held, int width, double *r);
+
+/* Grounds the rigid rotation about the global axis at the base joint: value += a stiffness of the joint's own size. */
+void assembly_ground_rotation(const Assembly *a, const double axis[3], double *value);
+
 /* Makes rows and columns of held directions those of the identity (times the scale of the joint). */
 void assembly_hold(const Assembly *a, const unsigned *held, double *value);
 

@@ -158,7 +158,9 @@ static EfStatus project(EfContext *cx, Lanczos *z, int blocks, bool closed, int 
     const int m = blocks * RHS, ld = MAX_SIZE + RHS;
     for (int i = 0; i < m; i++)
         for (int k = 0; k < m; k++) {
-            const double t = (z->T[i * ld + k] + z->T[k * ld + i]) / 2;
+            const int bi = i / RHS, bk = k / RHS; /* columns know the blocks before them only */
+            const double up = z->T[i * ld + k], down = z->T[k * ld + i];
+            const double t = bi < bk ? up : bi > bk ? down : (up + down) / 2;
             z->vectors[i * m + k] = z->live[i] && z->live[k] ? t : i == k; /* a dead column stands for infinity */
         }
     TRY(symmetric_eigen_large(cx, m, z->vectors, z->values));
@@ -182,7 +184,6 @@ static EfStatus take_modes(EfContext *cx, const Lanczos *z, int blocks, int n, M
     const int m = blocks * RHS;
     modes->n = n;
     ALLOC(cx, tmp, modes->factor, n);
-    ALLOC(cx, tmp, modes->residual, n);
     ALLOC(cx, tmp, modes->x, (size_t)n * (size_t)p->n);
     for (int q = 0; q < n; q++) { /* theta nearest zero is the lowest factor */
         const int e = n - 1 - q;
@@ -192,30 +193,6 @@ static EfStatus take_modes(EfContext *cx, const Lanczos *z, int blocks, int n, M
         for (int b = 0; b < blocks; b++)
             for (int i = 0; i < p->n; i++)
                 for (int k = 0; k < RHS; k++) x[i] += z->V[b][i * RHS + k] * z->vectors[e * m + b * RHS + k];
-    }
-    return EF_OK;
-}
-
-static EfStatus take_residuals(EfContext *cx, const Pencil *p, Modes *modes)
-{
-    double *x, *Kx, *Gx;
-    ALLOC(cx, tmp, x, p->n * RHS);
-    ALLOC(cx, tmp, Kx, p->n * RHS);
-    ALLOC(cx, tmp, Gx, p->n * RHS);
-    for (int q = 0; q < modes->n; q += RHS) {
-        const int width = modes->n - q < RHS ? modes->n - q : RHS;
-        for (int i = 0; i < p->n; i++)
-            for (int c = 0; c < width; c++) x[i * RHS + c] = modes->x[(size_t)(q + c) * (size_t)p->n + (size_t)i];
-        pencil_stiffness(p, x, Kx);
-        pencil_geometric(p, x, Gx);
-        for (int c = 0; c < width; c++) {
-            double r = 0, s = 0;
-            for (int i = 0; i < p->n; i++) {
-                const double k = Kx[i * RHS + c], d = k + modes->factor[q + c] * Gx[i * RHS + c];
-                r += d * d, s += k * k;
-            }
-            modes->residual[q + c] = sqrt(r / s);
-        }
     }
     return EF_OK;
 }
@@ -258,5 +235,5 @@ EfStatus krylov_modes(EfContext *cx, const Pencil *p, Modes *modes)
     ALLOC(cx, tmp, z.w, p->n * RHS);
     TRY(iterate(cx, &z, &blocks, &negative));
     TRY(take_modes(cx, &z, blocks, negative, modes));
-    return take_residuals(cx, p, modes);
+    return ritz_polish(cx, p, modes);
 }

@@ -17,4 +17,8 @@ typedef struct Modes {
 /* Finds the p->count factors in (0, p->sigma); fewer in modes->n when the iteration gives out. */
 EfStatus krylov_modes(EfContext *cx, const Pencil *p, Modes *modes);
 
+/* One step of inverse iteration and Rayleigh-Ritz on the modes found (ritz.c): cleans the stiff part of the shapes,
+ * and fills the residuals. Factors ascend again after it. */
+EfStatus ritz_polish(EfContext *cx, const Pencil *p, Modes *modes);
+
 #endif

@@ -12,12 +12,29 @@ static const double SUSPECT = 1e-9;
 /* Strain energy of a unit motion over that of the same motion with every joint clamped: a mechanism below it. */
 static const double NO_STRAIN = 1e-12;
 
-/* The matrix scaled to a unit diagonal: scale [6 nj] = 1/sqrt(diagonal). */
+/* Largest diagonal entry among the translations (0) or rotations (1) of a joint. */
+static double stiffest(const BlockPattern *p, const double *K, int j, int part)
+{
+    double largest = 0;
+    for (int s = 3 * part; s < 3 * part + 3; s++) largest = fmax(largest, K[BLOCK2 * p->start[j] + 7 * s]);
+    return largest;
+}
+
+/* The least diagonal entry over the stiffest of its kind in the joint. */
+static double least_diagonal(const BlockPattern *p, const double *K)
+{
+    double least = 1;
+    for (int j = 0; j < p->nj; j++)
+        for (int s = 0; s < BLOCK; s++) least = fmin(least, K[BLOCK2 * p->start[j] + 7 * s] / stiffest(p, K, j, s / 3));
+    return least;
+}
+
+/* The matrix scaled by the stiffest direction of every joint: scale [6 nj]. */
 static void scale_matrix(const BlockPattern *p, double *K, double *scale)
 {
     for (int j = 0; j < p->nj; j++)
         for (int s = 0; s < BLOCK; s++) {
-            const double d = K[BLOCK2 * p->start[j] + 7 * s];
+            const double d = stiffest(p, K, j, s / 3);
             scale[6 * j + s] = d > 0 ? 1 / sqrt(d) : 1;
         }
     for (int j = 0; j < p->nj; j++)
@@ -176,7 +193,8 @@ EfStatus mechanism_check(EfContext *cx, const Assembly *a, const unsigned *held,
     assembly_hold(a, held, K);
     if (!factor_fails(cx, factor, K, &st)) {
         TRY(st);
-        if (factor_negative(factor) == 0 && factor_smallest_pivot(factor, NULL) > SUSPECT) {
+        if (factor_negative(factor) == 0 && factor_smallest_pivot(factor, NULL) > SUSPECT &&
+            least_diagonal(&a->mesh->pattern, K) > SUSPECT) {
             arena_rewind(&cx->tmp, mark);
             return EF_OK;
         }

@@ -92,28 +92,6 @@ static EfStatus build_joint_part(EfContext *cx, Pencil *p)
     return EF_OK;
 }
 
-/* Rigid rotations of a free body about its base joint; r [n][RHS], the first three columns. */
-static EfStatus rigid_rotations(EfContext *cx, const Pencil *p, double *r)
-{
-    const Assembly *a = p->a;
-    double *u;
-    ALLOC(cx, tmp, u, 6 * a->nj);
-    const double *o = a->mesh->frame->joint[a->base].x;
-    for (int c = 0; c < 3; c++) {
-        for (int j = 0; j < a->nj; j++) {
-            const double *x = a->mesh->frame->joint[j].x;
-            const double t[3] = {c == 0, c == 1, c == 2}, d[3] = {x[0] - o[0], x[1] - o[1], x[2] - o[2]};
-            const double v[6] = {t[1] * d[2] - t[2] * d[1], t[2] * d[0] - t[0] * d[2], t[0] * d[1] - t[1] * d[0],
-                                 t[0], t[1], t[2]};
-            memcpy(u + 6 * j, v, sizeof v);
-        }
-        assembly_to_axes(a, u, u);
-        assembly_clear_held(a, p->held, u, 1);
-        for (int i = 0; i < 6 * a->nj; i++) r[i * RHS + c] = u[i];
-    }
-    return EF_OK;
-}
-
 /* Counts the negative directions of R' G R; a rotation that no load feels is grounded at the base joint. */
 static EfStatus treat_rigid_rotations(EfContext *cx, Pencil *p)
 {
@@ -121,7 +99,7 @@ static EfStatus treat_rigid_rotations(EfContext *cx, Pencil *p)
     double *r, *g, V[9] = {0}, values[3], vectors[9], scale = 0;
     ALLOC(cx, tmp, r, p->n * RHS);
     ALLOC(cx, tmp, g, p->n * RHS);
-    TRY(rigid_rotations(cx, p, r));
+    TRY(assembly_rigid_rotations(cx, a, p->held, RHS, r));
     pencil_geometric(p, r, g);
     for (int i = 0; i < 6 * a->nj; i++)
         for (int k = 0; k < 3; k++)
@@ -129,21 +107,9 @@ static EfStatus treat_rigid_rotations(EfContext *cx, Pencil *p)
     for (int t = 0; t < a->nt; t++)
         scale += fabs(tube_axial(&p->growing->forces[t], 0)) * a->mesh->tube[t].L;
     symmetric_eigen(3, V, values, vectors);
-    double *block = p->K + BLOCK2 * a->mesh->pattern.start[a->base];
-    for (int k = 0; k < 3; k++) {
-        if (fabs(values[k]) > 1e-9 * scale) {
-            p->rigid_negative += values[k] < 0;
-            continue;
-        }
-        double own[6] = {0}, *axis = own + 3;
-        const double s = block[21] + block[28] + block[35]; /* of the size of the joint's own stiffness */
-        for (int i = 0; i < 3; i++) {
-            const double *row = a->axes[a->base][1][i];
-            axis[i] = row[0] * vectors[3 * k] + row[1] * vectors[3 * k + 1] + row[2] * vectors[3 * k + 2];
-        }
-        for (int i = 0; i < 3; i++)
-            for (int l = 0; l < 3; l++) block[6 * (3 + i) + 3 + l] += s * axis[i] * axis[l];
-    }
+    for (int k = 0; k < 3; k++)
+        if (fabs(values[k]) > 1e-9 * scale) p->rigid_negative += values[k] < 0;
+        else assembly_ground_rotation(a, vectors + 3 * k, p->K);
     return EF_OK;
 }
 
@@ -198,15 +164,16 @@ static int eliminate(Pencil *p, double sigma)
 EfStatus pencil_shift(EfContext *cx, Pencil *p, double sigma)
 {
     /* A count taken at a root would be noise: such a shift is moved a little. */
-    static const double move[] = {0, 1.3e-8, 1.1e-7, 1.7e-6, 9.1e-6};
-    for (size_t i = 0; i < sizeof move / sizeof *move; i++) {
+    static const double move[] = {0, 1.3e-6, 1.1e-5, 7.3e-5, 3.1e-4};
+    const size_t n = sizeof move / sizeof *move;
+    for (size_t i = 0; i < n; i++) {
         p->sigma = sigma * (1 + move[i]);
         const int inside = eliminate(p, p->sigma);
         if (inside < 0) continue;
         const EfStatus st = factor_numeric(cx, p->factor, p->S);
         if (st == EF_E_TALLY) continue;
         TRY(st);
-        if (factor_growth(p->factor) > 1e7) continue;
+        if (factor_growth(p->factor) > 1e7 || (i + 1 < n && factor_smallest_pivot(p->factor, NULL) < 1e-10)) continue;
         p->count = inside + factor_negative(p->factor) - p->rigid_negative;
         return EF_OK;
     }

@@ -50,7 +50,7 @@ EfStatus pencil_build(EfContext *cx, const Assembly *a, const Stress *steady, co
                       bool *buckled, Pencil *p);
 void pencil_free(Pencil *p);
 
-/* Factorises K + sigma G and counts. sigma is moved by up to 1e-5 of itself where it meets a root. */
+/* Factorises K + sigma G and counts. sigma is moved by up to 3e-4 of itself where it meets a root. */
 EfStatus pencil_shift(EfContext *cx, Pencil *p, double sigma);
 
 /* The number of negative eigenvalues of the base stiffness (0 for a frame that its steady loads do not buckle). */
