@@ -43,7 +43,7 @@ typedef struct EfCritical {
     int counted;        /* critical factors proven to lie between 0 and counted_at */
     int found;          /* of them found */
     double counted_at;
-    double *shape;      /* [nm][nj][6], largest translation (else rotation) 1 */
+    double *shape;      /* [nm][nj][6], largest movement of joints and tubes (else rotation) 1 */
     double *line;       /* [nm][np][3], the same along the tubes */
     double *lost;       /* [nm][nt] share of the energy lost by compression */
     double *stored;     /* [nm][nt] share of the energy stored */
@@ -55,6 +55,7 @@ typedef struct EfCritical {
 
 /* Fixity of every tube in one case; [nt] unless said. */
 typedef struct EfFixity {
+    double own_at;         /* factor on the growing loads at which own c holds: 1, less where the frame buckles before */
     double *frame_c;       /* from the lowest factor in whose shape the tube leans */
     double *own_critical;  /* N, own critical compression, neighbours at the case load; negative: must be pulled */
     double *own_c;         /* own_critical over the pinned-end Euler load on joint-to-joint length */

@@ -273,8 +273,7 @@ static EfStatus axial_with(EfContext *cx, const Assembly *a, const State *state,
     assembly_add_springs(a, K);
     assembly_hold(a, held, K);
     TRY(factor_numeric(cx, factor, K));
-    TRY(axial_of(cx, a, &state->run->growing, factor, held, N));
-    return state->run->has_steady ? axial_of(cx, a, &state->run->steady, factor, held, N) : EF_OK;
+    return axial_of(cx, a, &state->run->growing, factor, held, N);
 }
 
 EfStatus exact_axial(EfContext *cx, const Assembly *a, const State *state, double *N)

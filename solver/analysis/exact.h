@@ -37,7 +37,7 @@ EfStatus exact_lowest(EfContext *cx, Exact *e, double guess, double *factor);
 /* A tube's matrix at a factor, local joint coordinates; its count of clamped states, -1: too near one. */
 int exact_tube(const Exact *e, int tube, double lambda, double S[END12][END12]);
 
-/* First-order axial forces mid-tube by this engine's own matrix, N [nt]. */
+/* First-order axial forces of the growing loads, mid-tube, by this engine's own matrix: added to N [nt]. */
 EfStatus exact_axial(EfContext *cx, const Assembly *a, const State *state, double *N);
 
 #endif

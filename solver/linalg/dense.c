@@ -90,6 +90,66 @@ int symmetric_negative(int n, const double *a, double tolerance)
     return negative;
 }
 
+static void swap_both(int n, int m, double *a, int p, int q)
+{
+    if (p == q) return;
+    for (int k = 0; k < m; k++) {
+        const double x = a[p * n + k];
+        a[p * n + k] = a[q * n + k], a[q * n + k] = x;
+    }
+    for (int k = 0; k < m; k++) {
+        const double x = a[k * n + p];
+        a[k * n + p] = a[k * n + q], a[k * n + q] = x;
+    }
+}
+
+/* Eliminates the last one or two rows of the leading m; n is the row length. */
+static void eliminate_one(int n, int m, double *a)
+{
+    const double *row = a + (m - 1) * n, d = row[m - 1];
+    for (int i = 0; i < m - 1; i++)
+        for (int j = 0; j < m - 1; j++) a[i * n + j] -= a[i * n + m - 1] * row[j] / d;
+}
+
+static void eliminate_two(int n, int m, double *a)
+{
+    const double *r = a + (m - 2) * n, *s = a + (m - 1) * n;
+    const double A = r[m - 2], B = r[m - 1], C = s[m - 1], det = A * C - B * B;
+    for (int i = 0; i < m - 2; i++) {
+        const double x = a[i * n + m - 2], y = a[i * n + m - 1];
+        const double p = (C * x - B * y) / det, q = (A * y - B * x) / det;
+        for (int j = 0; j < m - 2; j++) a[i * n + j] -= p * r[j] + q * s[j];
+    }
+}
+
+int symmetric_count(int n, double *a)
+{
+    static const double alpha = 0.6403882032022076; /* (1 + sqrt 17)/8 bounds the growth */
+    int negative = 0;
+    for (int m = n; m > 0;) {
+        int d = 0, p = 0, q = 0;
+        double off = 0;
+        for (int i = 0; i < m; i++) {
+            if (fabs(a[i * n + i]) > fabs(a[d * n + d])) d = i;
+            for (int j = 0; j < i; j++)
+                if (fabs(a[i * n + j]) > off) off = fabs(a[i * n + j]), p = j, q = i;
+        }
+        if (fabs(a[d * n + d]) >= alpha * off) {
+            if (a[d * n + d] == 0) return negative;
+            negative += a[d * n + d] < 0;
+            swap_both(n, m, a, d, m - 1);
+            eliminate_one(n, m--, a);
+            continue;
+        }
+        negative++; /* a 2x2 pivot with a large off-diagonal has one of each sign */
+        swap_both(n, m, a, q, m - 1);
+        swap_both(n, m, a, p == m - 1 ? q : p, m - 2);
+        eliminate_two(n, m, a);
+        m -= 2;
+    }
+    return negative;
+}
+
 EfStatus symmetric_eigen_large(EfContext *cx, int n, double *a, double *values)
 {
     const ArenaMark mark = arena_mark(&cx->tmp);

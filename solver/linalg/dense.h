@@ -15,4 +15,8 @@ EfStatus symmetric_eigen_large(EfContext *cx, int n, double *a, double *values);
 /* Number of eigenvalues of a [n][n] (n <= 24) below -tolerance x the largest in size; a is kept. */
 int symmetric_negative(int n, const double *a, double tolerance);
 
+/* The same by an LDL' with pivots of one or two rows (Bunch and Parlett 1971), without a tolerance: a [n][n] is
+ * destroyed. Far quicker where no vectors are wanted. */
+int symmetric_count(int n, double *a);
+
 #endif
