@@ -254,6 +254,14 @@ static EfStatus make_room(EfContext *cx, int nt, EfFixity *f)
     return EF_OK;
 }
 
+EfStatus fixity_blank(EfContext *cx, const Mesh *mesh, const char *note, EfFixity *f)
+{
+    TRY(make_room(cx, mesh->nt, f));
+    f->own_at = NAN;
+    for (int t = 0; t < mesh->nt; t++) f->note[t] = note, f->shape_of[t] = -1;
+    return EF_OK;
+}
+
 /* Frame c and role of every tube from the shapes. */
 static void fill_from_shapes(const OwnCurve *c, const EfCritical *shapes, EfFixity *f)
 {

@@ -28,4 +28,7 @@ EfStatus own_critical_at(EfContext *cx, OwnCurve *curve, double r, const bool *w
 /* Fills `fixity` but for reserve, safe c and "frame governs", which need a column rule. */
 EfStatus fixity_fill(EfContext *cx, OwnCurve *curve, const EfCaseResult *result, EfFixity *fixity);
 
+/* No values, for a frame that does not stand under its steady loads: every tube carries the note. */
+EfStatus fixity_blank(EfContext *cx, const Mesh *mesh, const char *note, EfFixity *fixity);
+
 #endif
