@@ -14,6 +14,7 @@ enum { MAX_RANK = ROW_DIMS + 1, PATH_SIZE = 256 };
 typedef struct Store {
     EfContext *cx;
     const char *name; /* of the file, for messages */
+    char key[40];     /* what HDF5 knows it by: no file can be called so */
     hid_t file;
     size_t file_size;
     int n[COUNTERS];        /* n[-NJ] and so on; -1 not yet known */
