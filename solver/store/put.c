@@ -102,13 +102,24 @@ static bool text_attribute(Store *s, hid_t object, const char *name, const char 
     return ok;
 }
 
-/* Units, explanation, and the datasets of names that go with its extents. */
-static bool describe(Store *s, hid_t d, const Row *row, const Shape *shape)
+/* What an extent runs over; NULL: nothing worth a label. */
+static const char *label_of(int counter)
+{
+    return counter == NJ ? "joint" : counter == NT ? "tube" : counter == NM ? "shape" : counter == NP ? "point" : NULL;
+}
+
+/* Units, explanation, and what the extents run over. Datasets of the frame are tied to the names of joints and tubes;
+ * those of the cases are not, for HDF5 writes the list of all ties anew at each one. */
+static bool describe(Store *s, hid_t d, const char *path, const Row *row, const Shape *shape)
 {
     if (!text_attribute(s, d, "units", row->unit) || !text_attribute(s, d, "about", row->help)) return false;
+    const bool tie = strncmp(path, "frame/", 6) == 0;
     for (int i = 0; i < shape->rank; i++) {
-        const hid_t scale = shape->counter[i] < 0 ? s->scale[-shape->counter[i]] : 0;
-        if (scale > 0 && H5DSattach_scale(d, scale, (unsigned)i) < 0) return false;
+        if (shape->counter[i] == 0) continue;
+        const char *label = label_of(shape->counter[i]);
+        const hid_t scale = s->scale[-shape->counter[i]];
+        if (label && H5DSset_label(d, (unsigned)i, label) < 0) return false;
+        if (tie && scale > 0 && H5DSattach_scale(d, scale, (unsigned)i) < 0) return false;
     }
     return true;
 }
@@ -124,7 +135,7 @@ static EfStatus put_dataset(Store *s, const char *path, const Row *row, hid_t ty
 {
     int counter;
     const hid_t d = new_dataset(s, path, type, shape, bytes);
-    bool ok = d >= 0 && describe(s, d, row, shape);
+    bool ok = d >= 0 && describe(s, d, path, row, shape);
     if (ok && is_scale(path, &counter)) {
         ok = H5DSset_scale(d, row->help) >= 0;
         s->scale[-counter] = d; /* stays open; closed with the file */
