@@ -149,7 +149,6 @@ static EfStatus read_named(Store *s, const char *path, const Row *row, const Ite
 static EfStatus read_row(Store *s, const char *prefix, const Row *row, const Items *items)
 {
     char path[PATH_SIZE];
-    const Items inside = {.base = items->base + row->offset, .n = 1};
     if (row->kind == ROW_COUNT) return EF_OK;
     TRY(hdf_path(s, prefix, row->path, path));
     switch (row->kind) {
@@ -159,7 +158,7 @@ static EfStatus read_row(Store *s, const char *prefix, const Row *row, const Ite
     case ROW_RAGGED: case ROW_RAGGED_LIST: return read_ragged(s, path, row, items);
     case ROW_LIST: return read_list(s, path, row, items);
     case ROW_NAMED: return read_named(s, path, row, items);
-    case ROW_GROUP: return read_table(s, path, row->table, &inside);
+    case ROW_GROUP: return read_table(s, path, row->table, &(Items){.base = items->base + row->offset, .n = 1});
     case ROW_COUNT: break;
     }
     return EF_OK;

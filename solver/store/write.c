@@ -84,7 +84,6 @@ static EfStatus write_list(Store *s, const char *path, const Row *row, const Ite
 static EfStatus write_row(Store *s, const char *prefix, const Row *row, const Items *items)
 {
     char path[PATH_SIZE];
-    const Items inside = {.base = items->base + row->offset, .n = 1};
     if (row->kind == ROW_COUNT) {
         s->n[-row->dim[0]] = item_int(items, 0, row->offset);
         return EF_OK;
@@ -95,7 +94,7 @@ static EfStatus write_row(Store *s, const char *prefix, const Row *row, const It
     case ROW_AT: case ROW_PIECES: return write_at(s, path, row, items);
     case ROW_RAGGED: case ROW_RAGGED_LIST: return write_ragged(s, path, row, items);
     case ROW_LIST: case ROW_NAMED: return write_list(s, path, row, items);
-    case ROW_GROUP: return write_table(s, path, row->table, &inside);
+    case ROW_GROUP: return write_table(s, path, row->table, &(Items){.base = items->base + row->offset, .n = 1});
     case ROW_COUNT: break;
     }
     return EF_OK;
