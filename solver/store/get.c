@@ -5,9 +5,6 @@
 
 #include "store/values.h"
 
-/* No packing makes more than this many bytes of one. */
-enum { MOST_PACKED = 1100 };
-
 /* A dataset or attribute, open. */
 typedef struct Thing {
     hid_t id, type, space;
@@ -22,18 +19,12 @@ static void thing_close(Thing *t)
     if (t->id >= 0 && !t->attribute) H5Dclose(t->id);
 }
 
-static hid_t open_attribute(Store *s, const char *path, const char *at)
-{
-    char group[PATH_SIZE] = "/";
-    if (at > path) memcpy(group, path, (size_t)(at - path - 1)), group[at - path - 1] = 0;
-    return H5Aopen_by_name(s->file, group, at + 1, H5P_DEFAULT, H5P_DEFAULT);
-}
-
 static EfStatus thing_open(Store *s, const char *path, const Row *row, Thing *t)
 {
-    const char *at = strchr(path, '@');
+    char group[PATH_SIZE];
+    const char *at = hdf_attribute(path, group);
     *t = (Thing){.id = -1, .type = -1, .space = -1, .attribute = at != NULL};
-    t->id = at ? open_attribute(s, path, at) : H5Dopen2(s->file, path, H5P_DEFAULT);
+    t->id = at ? H5Aopen_by_name(s->file, group, at + 1, H5P_DEFAULT, H5P_DEFAULT) : H5Dopen2(s->file, path, H5P_DEFAULT);
     if (t->id < 0) return fail(s->cx, EF_E_IO, "%s: %s is missing: written by another version, or damaged", s->name, path);
     t->type = at ? H5Aget_type(t->id) : H5Dget_type(t->id);
     t->space = at ? H5Aget_space(t->id) : H5Dget_space(t->id);

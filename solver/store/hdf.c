@@ -87,3 +87,11 @@ EfStatus hdf_path(Store *s, const char *prefix, const char *path, char out[PATH_
     const int n = snprintf(out, PATH_SIZE, "%s%s%s", prefix, slash, path);
     return n < 0 || n >= PATH_SIZE ? fail(s->cx, EF_E_IO, "%s: the name %s is too long", s->name, path) : EF_OK;
 }
+
+const char *hdf_attribute(const char *path, char group[PATH_SIZE])
+{
+    const char *slash = strrchr(path, '/'), *last = slash ? slash + 1 : path;
+    if (last[0] != '@') return NULL;
+    snprintf(group, PATH_SIZE, "%.*s", slash ? (int)(slash - path) : 1, slash ? path : "/");
+    return last;
+}

@@ -9,7 +9,11 @@
 #include "core/core.h"
 #include "store/schema.h"
 
-enum { MAX_RANK = ROW_DIMS + 1, PATH_SIZE = 256 };
+enum {
+    MAX_RANK = ROW_DIMS + 1,
+    PATH_SIZE = 256,
+    MOST_PACKED = 1100 /* no packing makes more than this many bytes of one */
+};
 
 typedef struct Store {
     EfContext *cx;
@@ -43,6 +47,9 @@ void hdf_close(Store *s);
 
 /* prefix/path, or only one of them when the other is "". */
 EfStatus hdf_path(Store *s, const char *prefix, const char *path, char out[PATH_SIZE]);
+
+/* The "@x" a path of an attribute ends in; NULL: a dataset. `group` becomes the path of what it belongs to. */
+const char *hdf_attribute(const char *path, char group[PATH_SIZE]);
 
 /* Bytes of a value in memory. */
 size_t value_size(ValueType type);

@@ -145,7 +145,7 @@ static EfStatus put_dataset(Store *s, const char *path, const Row *row, hid_t ty
 
 EfStatus hdf_put_attribute(Store *s, const char *group, const char *name, hid_t type, const Shape *shape, const void *values)
 {
-    const hid_t object = H5Oopen(s->file, group[0] ? group : "/", H5P_DEFAULT);
+    const hid_t object = H5Oopen(s->file, group, H5P_DEFAULT);
     bool ok = object >= 0 && new_attribute(object, name, type, shape, values);
     if (object >= 0) ok = H5Oclose(object) >= 0 && ok;
     return ok ? EF_OK : bad_put(s, name);
@@ -158,13 +158,10 @@ EfStatus hdf_put(Store *s, const char *path, const Row *row, const Shape *shape,
     const void *bytes;
     TRY(make_groups(s, path));
     TRY(values_encode(s, path, row, shape_size(shape, 0), values, &type, &bytes));
-    const char *at = strchr(path, '@');
-    EfStatus st;
-    if (at) {
-        char group[PATH_SIZE] = "";
-        if (at > path) memcpy(group, path, (size_t)(at - path - 1));
-        st = hdf_put_attribute(s, group, at + 1, type, shape, bytes);
-    } else st = put_dataset(s, path, row, type, shape, bytes);
+    char group[PATH_SIZE];
+    const char *at = hdf_attribute(path, group);
+    const EfStatus st = at ? hdf_put_attribute(s, group, at + 1, type, shape, bytes)
+                           : put_dataset(s, path, row, type, shape, bytes);
     H5Tclose(type);
     arena_rewind(&s->cx->tmp, mark);
     return st;

@@ -56,6 +56,8 @@ static EfStatus read_pieces(Store *s, const char *path, const Row *row, const It
     const int n = s->n[-row->dim[0]];
     memcpy(one.dim, row->dim + 1, sizeof one.dim - sizeof *one.dim);
     for (int pass = 0; pass < 2; pass++) {
+        if (n > 0 && shape_size(&shape, 0) > s->file_size * MOST_PACKED / (size_t)n)
+            return fail(s->cx, EF_E_IO, "%s: damaged: %s is too large", s->name, path);
         if (pass == 1) ALLOC(s->cx, keep, values, (size_t)n * shape_size(&shape, 0) * value_size(row->type));
         for (int i = 0; i < n; i++) {
             char name[16], full[PATH_SIZE];

@@ -74,7 +74,7 @@ Shape row_shape(const Store *s, const Row *row, const Items *items)
 
 EfStatus check_group_name(Store *s, const char *name)
 {
-    if (name && name[0] && !strpbrk(name, "/@") && strcmp(name, ".") != 0 && strcmp(name, "..") != 0) return EF_OK;
+    if (name && name[0] && !strchr(name, '/') && strcmp(name, ".") != 0 && strcmp(name, "..") != 0) return EF_OK;
     return fail(s->cx, EF_E_IO, "%s: a case cannot be called \"%s\" in a results file", s->name, name ? name : "");
 }
 

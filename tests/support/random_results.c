@@ -188,7 +188,7 @@ static void fill_case(Source *s, EfResults *r, int number)
     Array a[MOST_ARRAYS];
     s->n[-NREACTION] = pick(s, 0, 4), s->n[-NMARGIN] = pick(s, 0, 9), s->n[-NLEDGER] = pick(s, 0, 9), s->n[-NM] = pick(s, 0, 4);
     fill_lists(s, results_table.row[results_table.nrow - 1].table, (char *)c);
-    c->name = keep_format(s->cx, "case %d%s", number, c->reversed ? " reversed" : "");
+    c->name = keep_format(s->cx, "@%d @ 3 g%s", number, c->reversed ? " reversed" : "");
     c->critical.nmode = s->n[-NM];
     c->negative.nmode = pick(s, 0, 3);
     fill_arrays(s, case_arrays(c, nj, nt, a), a);
