@@ -15,7 +15,7 @@ typedef enum EfRole {
     EF_ROLE_IDLE,    /* does not move */
     EF_ROLE_RIDING,  /* moves without bending */
     EF_ROLE_BRACING, /* stores more than it loses: it holds */
-    EF_ROLE_LEANING  /* loses at least as much as it stores: it drives the shape */
+    EF_ROLE_LEANING  /* loses at least as much as it stores, and 5 % of all: it drives the shape */
 } EfRole;
 
 /* How the search for critical factors ended. */

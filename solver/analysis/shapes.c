@@ -6,7 +6,8 @@
 #include "analysis/buckling.h"
 
 static const double SAME_FAMILY = 1e-3; /* relative gap of factors */
-static const double NO_PART = 1e-4;     /* share of energy below which a tube takes no part */
+static const double NO_PART = 1e-3;     /* share of energy below which a tube takes no part */
+static const double DRIVES = 0.05;      /* and of the lost energy from which a tube may be said to drive a shape */
 static const double NO_MOVE = 0.02;     /* of the largest movement */
 
 /* ---- shapes ------------------------------------------------------------------------------------------------------ */
@@ -118,8 +119,9 @@ static void fill_roles(const EfResults *results, const Mesh *mesh, int k, double
     for (int t = 0; t < nt; t++) {
         const double W = c->lost[k * nt + t], U = c->stored[k * nt + t];
         int role = EF_ROLE_BRACING;
-        if (W < NO_PART && U < NO_PART) role = moved[t] > NO_MOVE ? EF_ROLE_RIDING : EF_ROLE_IDLE;
-        else if (W >= (1 - 1e-3) * U) role = EF_ROLE_LEANING;
+        const bool gives = W >= (1 - 1e-3) * U;
+        if ((W < NO_PART && U < NO_PART) || (gives && W < DRIVES)) role = moved[t] > NO_MOVE ? EF_ROLE_RIDING : EF_ROLE_IDLE;
+        else if (gives) role = EF_ROLE_LEANING;
         c->role[k * nt + t] = role;
     }
 }
