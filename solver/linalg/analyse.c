@@ -74,7 +74,7 @@ static void relate(Analysis *a, const int *super_of)
     for (int s = 0; s < a->nsuper; s++) {
         const int own = a->super[s + 1] - a->super[s], rows = a->first[s + 1] - a->first[s];
         a->parent[s] = rows > own ? super_of[a->row[a->first[s] + own]] : -1;
-        if (rows > own) a->nchild[a->parent[s]]++;
+        if (rows > own) a->sibling[s] = a->last_child[a->parent[s]], a->last_child[a->parent[s]] = s;
         for (int k = own; k < rows; k++) a->place[a->first[s] + k] = place_in(a, a->parent[s], a->row[a->first[s] + k]);
         a->panel[s + 1] = a->panel[s] + (size_t)(BLOCK * own) * (size_t)(BLOCK * rows);
         if (BLOCK * rows > a->largest_front) a->largest_front = BLOCK * rows;
@@ -86,8 +86,7 @@ static void measure_stack(Analysis *a, size_t *of_children)
 {
     size_t now = 0;
     for (int s = 0; s < a->nsuper; s++) {
-        const int own = a->super[s + 1] - a->super[s], below = a->first[s + 1] - a->first[s] - own;
-        const size_t update = (size_t)(BLOCK * below) * (size_t)(BLOCK * below);
+        const size_t update = update_size(a, s);
         now += update - of_children[s];
         if (a->parent[s] >= 0) of_children[a->parent[s]] += update;
         if (now > a->stack_size) a->stack_size = now;
@@ -139,12 +138,13 @@ static EfStatus make_room(EfContext *cx, const BlockPattern *p, Analysis *a)
     const size_t ns = (size_t)a->nsuper;
     a->place = core_malloc(cx, (size_t)a->first[ns], sizeof *a->place);
     a->parent = core_malloc(cx, ns, sizeof *a->parent);
-    a->nchild = core_malloc(cx, ns, sizeof *a->nchild);
+    a->last_child = core_malloc(cx, ns, sizeof *a->last_child);
+    a->sibling = core_malloc(cx, ns, sizeof *a->sibling);
     a->entry_start = core_malloc(cx, ns + 1, sizeof *a->entry_start);
     a->entry = core_malloc(cx, (size_t)p->start[p->nj], sizeof *a->entry);
     a->panel = core_malloc(cx, ns + 1, sizeof *a->panel);
-    if (!a->place || !a->parent || !a->nchild || !a->entry_start || !a->entry || !a->panel) return EF_E_MEMORY;
-    memset(a->nchild, 0, ns * sizeof *a->nchild);
+    if (!a->place || !a->parent || !a->last_child || !a->sibling || !a->entry_start || !a->entry || !a->panel) return EF_E_MEMORY;
+    for (size_t s = 0; s < ns; s++) a->last_child[s] = a->sibling[s] = -1;
     memset(a->entry_start, 0, (ns + 1) * sizeof *a->entry_start);
     a->panel[0] = 0;
     return EF_OK;
@@ -166,7 +166,7 @@ EfStatus factor_analyse(EfContext *cx, const BlockPattern *p, Analysis **analysi
 void analysis_free(Analysis *a)
 {
     if (!a) return;
-    free(a->old_of), free(a->super), free(a->first), free(a->row), free(a->place), free(a->parent), free(a->nchild);
-    free(a->entry_start), free(a->entry), free(a->panel);
+    free(a->old_of), free(a->super), free(a->first), free(a->row), free(a->place), free(a->parent);
+    free(a->last_child), free(a->sibling), free(a->entry_start), free(a->entry), free(a->panel);
     free(a);
 }

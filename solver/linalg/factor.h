@@ -48,8 +48,8 @@ double factor_growth(const Factor *factor); /* largest |l| / sqrt|d| seen: trust
 /* Smallest |pivot| / |diagonal entry| and the scalar row (6 joint + direction) where it was met. */
 double factor_smallest_pivot(const Factor *factor, int *row);
 
-/* x := A^-1 x for n vectors, x is [6 nj][n] row-major. n is at most RHS for best speed; any n works.
- * Uses scratch of cx->tmp. */
+/* x := A^-1 x for n vectors, x is [6 nj][n] row-major; RHS vectors cost little more than one. Works in room of the
+ * factor, as the selected inverse does: one call at a time for a factor. */
 EfStatus factor_solve(EfContext *cx, const Factor *factor, double *x, int n);
 
 /* Selected inverse (Takahashi, Fagan and Chin 1973): the blocks of A^-1 inside the pattern,

@@ -48,6 +48,22 @@ static double *dense(EfContext *cx, const BlockPattern *p, const double *v)
     return A;
 }
 
+/* 1, 3 and 19 columns give what RHS columns gave: x [6 nj][RHS] for b. */
+static void any_number_of_columns(EfContext *cx, const BlockPattern *p, const Factor *f, const double *x, const double *b)
+{
+    const int rows = BLOCK * p->nj;
+    double *y = arena_take(cx, &cx->tmp, (size_t)(rows * 19), sizeof *y), largest = 0;
+    for (int i = 0; i < rows * RHS; i++) largest = fmax(largest, fabs(x[i]));
+    const double tolerance = 1e-12 * fmax(1, factor_growth(f) * factor_growth(f)) * largest;
+    for (int n = 1; n <= 19; n = n == 1 ? 3 : n + 16) {
+        for (int i = 0; i < rows; i++)
+            for (int c = 0; c < n; c++) y[i * n + c] = b[i * RHS + c % RHS];
+        CHECK_OK(cx, factor_solve(cx, f, y, n));
+        for (int i = 0; i < rows; i++)
+            for (int c = 0; c < n; c++) CHECK_ABS(y[i * n + c], x[i * RHS + c % RHS], tolerance);
+    }
+}
+
 /* Count, solve and selected inverse of one random matrix against dense ones. */
 static void compare(int nj, int more, bool apart, double diagonal, uint64_t stream)
 {
@@ -77,6 +93,7 @@ static void compare(int nj, int more, bool apart, double diagonal, uint64_t stre
 
     double *Z = arena_take(cx, &cx->tmp, (size_t)(BLOCK2 * p.start[nj]), sizeof *Z);
     CHECK_OK(cx, factor_selected_inverse(cx, f, Z));
+    any_number_of_columns(cx, &p, f, x, b);
     double largest = 0;
     for (int i = 0; i < n; i++) largest = fmax(largest, 1 / fabs(w[i]));
     for (int j = 0; j < nj; j++)
@@ -96,12 +113,14 @@ static void definite(void **state)
 {
     (void)state;
     for (uint64_t s = 0; s < 6; s++) compare(12 + 5 * (int)s, 20, false, 30, 100 * s);
+    compare(44, 1500, false, 60, 600); /* one front of several wide panels */
 }
 
 static void indefinite(void **state)
 {
     (void)state;
     for (uint64_t s = 0; s < 6; s++) compare(8 + 6 * (int)s, 25, false, 0.3, 1000 + 100 * s);
+    compare(44, 1500, false, 14, 1600);
 }
 
 static void single_joint_and_loose_parts(void **state)
@@ -151,6 +170,34 @@ static void smallest_pivot(void **state)
     int row;
     CHECK_REL(factor_smallest_pivot(f, &row), 2e-9, 1e-6);
     assert_true(row == 4 || row == 16);
+    factor_free(f);
+    analysis_free(a);
+    ef_close(cx);
+}
+
+/* The pivot is measured against the matrix's own diagonal, however much its neighbours took from it before: 200 arms
+ * of stiffness 1 on a centre that only 1e-6 holds leave it that much of its 200. */
+static void pivot_after_many_neighbours(void **state)
+{
+    (void)state;
+    enum { ARMS = 200 };
+    EfContext *cx = ef_open();
+    BlockPattern p;
+    Analysis *a = NULL;
+    Factor *f = NULL;
+    int pair[ARMS][2], row;
+    for (int i = 0; i < ARMS; i++) pair[i][0] = 0, pair[i][1] = i + 1;
+    CHECK_OK(cx, pattern_from_pairs(cx, ARMS + 1, ARMS, (const int(*)[2])pair, &p));
+    double *v = arena_take(cx, &cx->tmp, (size_t)(BLOCK2 * p.start[p.nj]), sizeof *v);
+    for (int k = 0; k < BLOCK; k++) {
+        v[7 * k] = ARMS + (k == 2 ? 1e-6 : 1);
+        for (int i = 1; i <= ARMS; i++) v[BLOCK2 * pattern_block(&p, i, 0) + 7 * k] = -1, v[BLOCK2 * p.start[i] + 7 * k] = 1;
+    }
+    CHECK_OK(cx, factor_analyse(cx, &p, &a));
+    CHECK_OK(cx, factor_new(cx, a, &f));
+    CHECK_OK(cx, factor_numeric(cx, f, v));
+    CHECK_REL(factor_smallest_pivot(f, &row), 1e-6 / ARMS, 1e-6);
+    assert_int_equal(row, 2);
     factor_free(f);
     analysis_free(a);
     ef_close(cx);
@@ -238,7 +285,7 @@ int main(void)
         cmocka_unit_test(definite),       cmocka_unit_test(indefinite),
         cmocka_unit_test(bad_pivots),     cmocka_unit_test(single_joint_and_loose_parts),
         cmocka_unit_test(smallest_pivot), cmocka_unit_test(grid_against_cholmod),
-        cmocka_unit_test(allocation_failures),
+        cmocka_unit_test(allocation_failures), cmocka_unit_test(pivot_after_many_neighbours),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
 }
