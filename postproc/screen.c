@@ -99,7 +99,7 @@ static EfStatus worst_row(EfContext *cx, const EfResults *r, const Worst *w, Tab
     static const char *const state[] = {"", " close", " negative", ""};
     const EfMargin *m = w->m;
     const EfFixity *f = &w->c->fixity;
-    const char *margin = keep_format(cx, "%+.2f%s", m->margin, state[m->state]);
+    const char *margin = m->margin > 99 ? "over +99" : keep_format(cx, "%+.2f%s", m->margin, state[m->state]);
     if (!margin) return cx->status;
     if (m->tube < 0) {
         const char *rule = keep_format(cx, "lowest factor over %.3g required", m->demand);

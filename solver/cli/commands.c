@@ -54,12 +54,13 @@ static bool ends_with(const char *s, const char *end)
     return n > m && strcmp(s + n - m, end) == 0;
 }
 
-/* DIR/stem.h5 for FOLDER/stem.yaml. */
+/* stem.results.h5 for FOLDER/stem.yaml, beside it or in --out. */
 static char *results_path(EfContext *cx, const Arguments *a, const char *frame)
 {
     const char *slash = strrchr(frame, '/'), *name = slash ? slash + 1 : frame, *dot = strrchr(name, '.');
     const int n = dot && dot > name ? (int)(dot - name) : (int)strlen(name);
-    return keep_format(cx, "%s/%.*s.h5", a->out, n, name);
+    if (a->out) return keep_format(cx, "%s/%.*s.results.h5", a->out, n, name);
+    return keep_format(cx, "%.*s%.*s.results.h5", (int)(name - frame), frame, n, name);
 }
 
 static EfStatus run_frame(EfContext *cx, const Arguments *a, const EfFrame *frame, EfResults **results)
@@ -75,7 +76,7 @@ static EfStatus run_frame(EfContext *cx, const Arguments *a, const EfFrame *fram
 
 static EfStatus store(EfContext *cx, const Arguments *a, const EfResults *results, const char *path)
 {
-    if (mkdir(a->out, 0777) != 0 && errno != EEXIST) return fail(cx, EF_E_IO, "Cannot make the folder %s: %s.", a->out, strerror(errno));
+    if (a->out && mkdir(a->out, 0777) != 0 && errno != EEXIST) return fail(cx, EF_E_IO, "Cannot make the folder %s: %s.", a->out, strerror(errno));
     return ef_write_results(cx, results, path);
 }
 

@@ -95,7 +95,7 @@ static const Option options[] = {
     {"--count", "N", "critical factors wanted per case (6)", take_count},
     {"--both-signs", NULL, "also the factors of the reversed growing loads", take_both},
     {"--input-only", NULL, "faults, doubts and weights, no loads", take_input_only},
-    {"--out", "DIR", "folder for results (.)", take_out},
+    {"--out", "DIR", "folder for results (that of the frame file)", take_out},
     {"--units", "si|inch", "units of the tables (si)", take_units},
     {"--as", "FORM", "text, csv, json or md (text)", take_as},
     {"--export-matrices", "DIR", "also write K and K_G of every case in Matrix Market form", take_matrices},
@@ -138,7 +138,7 @@ static bool unknown(const char *arg)
 
 bool read_arguments(int argc, char **argv, Arguments *a)
 {
-    *a = (Arguments){.out = ".", .writer = writer(0)};
+    *a = (Arguments){.writer = writer(0)};
     for (int i = 1; i < argc; i++) {
         const char *value;
         if (strncmp(argv[i], "--", 2) != 0) {
