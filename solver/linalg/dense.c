@@ -2,7 +2,6 @@
  * SPDX-License-Identifier: GPL-3.0-or-later */
 #include "linalg/dense.h"
 
-#include <assert.h>
 #include <math.h>
 #include <stdbool.h>
 #include <string.h>
@@ -11,7 +10,7 @@
 void dsyevd_(const char *job, const char *part, const int *n, double *a, const int *lda, double *w, double *work,
              const int *lwork, int *iwork, const int *liwork, int *info);
 
-enum { MAX_SMALL = 24, SWEEPS = 60 };
+enum { SWEEPS = 60 };
 
 /* Turns rows p and q of m [n][n] by the angle (c, s). */
 static void turn_rows(int n, double *m, int p, int q, double c, double s)
@@ -77,19 +76,6 @@ void symmetric_eigen(int n, double *a, double *values, double *vectors)
     sort_ascending(n, values, vectors);
 }
 
-int symmetric_negative(int n, const double *a, double tolerance)
-{
-    assert(n <= MAX_SMALL);
-    double copy[MAX_SMALL * MAX_SMALL], vectors[MAX_SMALL * MAX_SMALL], values[MAX_SMALL];
-    memcpy(copy, a, (size_t)(n * n) * sizeof *copy);
-    symmetric_eigen(n, copy, values, vectors);
-    double largest = 0;
-    for (int i = 0; i < n; i++) largest = fmax(largest, fabs(values[i]));
-    int negative = 0;
-    for (int i = 0; i < n; i++) negative += values[i] < -tolerance * largest;
-    return negative;
-}
-
 static void swap_both(int n, int m, double *a, int p, int q)
 {
     if (p == q) return;
@@ -134,7 +120,7 @@ int symmetric_count(int n, double *a)
             for (int j = 0; j < i; j++)
                 if (fabs(a[i * n + j]) > off) off = fabs(a[i * n + j]), p = j, q = i;
         }
-        if (fabs(a[d * n + d]) >= alpha * off) {
+        if (!(fabs(a[d * n + d]) < alpha * off)) { /* a NaN too: a last row has no partner */
             if (a[d * n + d] == 0) return negative;
             negative += a[d * n + d] < 0;
             swap_both(n, m, a, d, m - 1);

@@ -12,11 +12,8 @@ void symmetric_eigen(int n, double *a, double *values, double *vectors);
 /* The same for any n by LAPACK: values ascending, vector k is row k of a on return. */
 EfStatus symmetric_eigen_large(EfContext *cx, int n, double *a, double *values);
 
-/* Number of eigenvalues of a [n][n] (n <= 24) below -tolerance x the largest in size; a is kept. */
-int symmetric_negative(int n, const double *a, double tolerance);
-
-/* The same by an LDL' with pivots of one or two rows (Bunch and Parlett 1971), without a tolerance: a [n][n] is
- * destroyed. Far quicker where no vectors are wanted. */
+/* Number of negative eigenvalues of a [n][n], which is destroyed, by an LDL' with pivots of one or two rows (Bunch and
+ * Parlett 1971). Far quicker where no vectors are wanted. */
 int symmetric_count(int n, double *a);
 
 #endif
