@@ -29,6 +29,18 @@ static void acceleration(const Mesh *mesh, const double a[3], const double alpha
     for (int i = 0; i < 3; i++) out[i] += a[i];
 }
 
+/* Moment that the loads on joints could have: their sizes times the distances from the centre of mass. */
+static double load_size(const Mesh *mesh, const Loads *l)
+{
+    double sum = 0;
+    for (int j = 0; j < mesh->nj; j++) {
+        const double *f = l->joint + 6 * j, *x = mesh->frame->joint[j].x, *c = mesh->centre_of_mass;
+        const double r[3] = {x[0] - c[0], x[1] - c[1], x[2] - c[2]};
+        sum += sqrt(dot(f, f) * dot(r, r)) + sqrt(dot(f + 3, f + 3));
+    }
+    return sum;
+}
+
 EfStatus balance_by_inertia(EfContext *cx, const Mesh *mesh, Run *run)
 {
     if (run->has_steady)
@@ -66,9 +78,9 @@ EfStatus balance_by_inertia(EfContext *cx, const Mesh *mesh, Run *run)
         load_equipment(mesh, e, f, l);
     }
     for (int i = 0; i < 6; i++) run->inertia_total[i] = l->total[i] - before[i];
-    double size = 0, left = 0;
-    for (int i = 3; i < 6; i++) size = fmax(size, fabs(before[i])), left = fmax(left, fabs(l->total[i]));
-    if (left > 1e-6 * size && left > 0)
+    double left = 0;
+    for (int i = 3; i < 6; i++) left = fmax(left, fabs(l->total[i]));
+    if (left > 1e-6 * load_size(mesh, l))
         return fail(cx, EF_E_INPUT, "Case %s turns the free frame about an axis along which it has no inertia. Add supports.", run->name);
     return EF_OK;
 }
