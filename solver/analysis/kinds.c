@@ -84,13 +84,14 @@ static double turning_share(const Mesh *mesh, const double *shape, int *moving)
     for (int j = 0; j < mesh->nj; j++) {
         const double *u = shape + 6 * j, w = u[0] * u[0] + u[1] * u[1] + u[2] * u[2];
         double r[3];
+        all += w;
+        if (w < 0.04 * largest) continue; /* what stands still has no say in the axis */
         for (int i = 0; i < 3; i++) r[i] = joint[j].x[i] - centre[i] / weight;
         L[0] += r[1] * u[2] - r[2] * u[1];
         L[1] += r[2] * u[0] - r[0] * u[2];
         L[2] += r[0] * u[1] - r[1] * u[0];
         for (int i = 0; i < 3; i++)
             for (int k = 0; k < 3; k++) I[3 * i + k] += (i == k ? r[0] * r[0] + r[1] * r[1] + r[2] * r[2] : 0) - r[i] * r[k];
-        all += w;
         *moving += w > 0.25 * largest;
     }
     symmetric_eigen(3, I, values, vectors);

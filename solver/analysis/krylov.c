@@ -13,6 +13,8 @@
 
 enum { MAX_BLOCKS = 40, MAX_SIZE = MAX_BLOCKS * RHS, RR = RHS * RHS };
 static const double CONVERGED = 1e-10; /* K-norm of the residual over |theta| */
+/* x'Kx over x'diag(K)x below which only rounding is left: a rigid motion of a free body, or a space run out. */
+static const double ROUNDING = 1e-13;
 
 typedef struct Lanczos {
     const Pencil *p;
@@ -61,6 +63,20 @@ static void block_multiply_right(int n, double *W, const double *M)
     }
 }
 
+/* x'diag(K)x of the combination v [RHS] of the columns of w. */
+static double diagonal_norm(const Pencil *p, const double *w, const double *v)
+{
+    const int *start = p->a->mesh->pattern.start;
+    double sum = 0;
+    for (int i = 0; i < p->n; i++) {
+        const double d = i < 6 * p->a->nj ? p->K[BLOCK2 * start[i / 6] + 7 * (i % 6)] : 1;
+        double x = 0;
+        for (int k = 0; k < RHS; k++) x += v[k] * w[i * RHS + k];
+        sum += d * x * x;
+    }
+    return sum;
+}
+
 /* One pass: makes w K-orthonormal; columns that carry nothing above `floor` (squared norm) become zero.
  * back [RHS][RHS]: w_old = w_new back. Kw is kept up to date. */
 static void normalise(const Lanczos *z, double *w, double *Kw, double floor, bool live[RHS], double *back)
@@ -70,7 +86,8 @@ static void normalise(const Lanczos *z, double *w, double *Kw, double floor, boo
     symmetric_eigen(RHS, M, values, vectors);
     for (int k = 0; k < RHS; k++) { /* the largest first; vectors row k */
         const int e = RHS - 1 - k;
-        live[k] = values[e] > floor && values[e] > 1e-14 * values[RHS - 1];
+        live[k] = values[e] > floor && values[e] > 1e-14 * values[RHS - 1] &&
+                  values[e] > ROUNDING * diagonal_norm(z->p, w, vectors + e * RHS);
         for (int i = 0; i < RHS; i++) {
             turn[i * RHS + k] = live[k] ? vectors[e * RHS + i] / sqrt(values[e]) : 0;
             back[k * RHS + i] = live[k] ? vectors[e * RHS + i] * sqrt(values[e]) : 0;
