@@ -78,7 +78,10 @@ static void read_level(Reader *rd, Node *n, EfLevel *level, double *factor)
     *factor = 1;
     if (!word) return;
     *level = strcmp(word, "ultimate") == 0 ? EF_LEVEL_ULTIMATE : EF_LEVEL_LIMIT;
-    if (*level == EF_LEVEL_LIMIT && strcmp(word, "limit") != 0) FAULT(rd, v->mark, "`%s` is not a level. Write limit or ultimate.", word);
+    if (*level == EF_LEVEL_LIMIT && strcmp(word, "limit") != 0) {
+        FAULT(rd, v->mark, "`%s` is not a level. Write limit or ultimate.", word);
+        return;
+    }
     if (u) read_number(rd, u, DIM_NUMBER, factor);
     if (u && *level == EF_LEVEL_ULTIMATE) FAULT(rd, u->key_mark, "The loads of an ultimate case are final: leave `ultimate factor` out.");
     if (u && !(*factor >= 1)) FAULT(rd, u->mark, "An ultimate factor is at least 1.");

@@ -58,6 +58,7 @@ static void unknown(Reader *rd, const Names *names, const char *name, EfMark mar
 
 int names_need(Reader *rd, const Names *names, const Node *n)
 {
+    if (!names->what) return -1; /* their section was not read: that fault stands already */
     const char *name = scalar_text(rd, n, names->what);
     if (!name) return -1;
     const int i = names_find(names, name);
@@ -101,9 +102,10 @@ static bool take(Reader *rd, const Names *names, const Node *n, bool *taken)
 bool names_list(Reader *rd, const Names *names, const Node *n, int *count, const int **index)
 {
     bool good = true;
+    *count = 0;
+    if (!names->what) return false;
     bool *taken = arena_take(rd->cx, &rd->cx->tmp, (size_t)names->n, sizeof *taken);
     if (!taken) return false;
-    *count = 0;
     if (n->kind == NODE_MAP || (n->kind == NODE_LIST && n->count == 0)) {
         FAULT(rd, n->mark, "Name a %s here, or a list of them.", names->what);
         return false;
