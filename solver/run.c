@@ -86,11 +86,13 @@ static EfStatus witness(EfContext *cx, const Assembly *a, const State *state, co
 static EfStatus fixity_and_checks(EfContext *cx, const Assembly *a, const Stress *steady, const Stress *growing, double guess_c,
                                   EfCaseResult *r)
 {
-    const bool found = r->critical.nmode > 0, apart = fabs(r->witness.difference) > 0.01 || (found && isnan(r->witness.factor));
+    const bool found = r->critical.nmode > 0, differ = fabs(r->witness.difference) > 0.01 || (found && isnan(r->witness.factor));
+    /* The rigid rotations of a free body feel the loads themselves, of which axial forces are only a part. */
+    const bool full = differ || a->base >= 0;
     double cap = INFINITY;
     if (found) cap = 0.999 * fmin(r->critical.factor[0], isnan(r->witness.factor) ? INFINITY : r->witness.factor);
     OwnCurve curve;
-    EfStatus st = own_curve_new(cx, a, steady, growing, cap, apart, &curve);
+    EfStatus st = own_curve_new(cx, a, steady, growing, cap, full, &curve);
     if (r->critical.outcome == EF_STEADY_BUCKLES) st = st == EF_OK ? fixity_blank(cx, a->mesh, "steady loads buckle", &r->fixity) : st;
     else {
         if (st == EF_OK) st = fixity_fill(cx, &curve, r, &r->fixity);

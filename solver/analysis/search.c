@@ -6,8 +6,9 @@
 #include "analysis/buckling.h"
 
 static const double PI = 3.14159265358979323846;
-/* Where nothing is compressed, bending and torque are searched to this factor. */
-static const double IDLE_CAP = 100;
+/* Where nothing is compressed, bending and torque are searched to this factor, and on until they alone would make
+ * waves as short as those of a tube between clamped ends in its second shape. */
+static const double IDLE_CAP = 100, IDLE_WAVES = 16;
 /* No answer is sought beyond it. */
 static const double CAP = 1e9;
 /* Largest bound on the error of a tube's matrix that a search may lean on. */
@@ -50,6 +51,18 @@ static bool loaded(const Assembly *a, const Stress *growing)
     return false;
 }
 
+static double idle_cap(const Assembly *a, const Stress *growing)
+{
+    double most = 0;
+    for (int t = 0; t < a->nt; t++) {
+        TubeForces f = growing->forces[t];
+        double twist;
+        memset(f.N, 0, sizeof f.N);
+        most = fmax(most, tube_waves(&a->mesh->tube[t], NULL, &f, 1, &twist));
+    }
+    return most > 0 ? fmax(IDLE_CAP, sqrt(IDLE_WAVES * PI * PI / most)) : IDLE_CAP;
+}
+
 void search_free(Search *s) { pencil_free(&s->pencil); }
 
 /* A pencil good for sigma: the one at hand, or a new one. *too_short: a tube's wave is too short for the element. */
@@ -81,7 +94,8 @@ static EfStatus find_shift(EfContext *cx, const Assembly *a, const Stress *stead
     const bool pressed = compresses(a, growing);
     double sigma = fmin(clamped_bound(a, steady, growing), CAP), lo = 0, hi = INFINITY, wall = INFINITY;
     int clo = 0, chi = 0;
-    if (!pressed) sigma = IDLE_CAP;
+    const double cap = pressed ? CAP : fmin(idle_cap(a, growing), CAP);
+    if (!pressed) sigma = cap;
     else if (sigma >= CAP) sigma = 1;
     for (int pass = 0; pass < 80; pass++) {
         bool too_short;
@@ -99,11 +113,10 @@ static EfStatus find_shift(EfContext *cx, const Assembly *a, const Stress *stead
         if (c >= want && c <= 2 * want + 4) return EF_OK;
         if (c < want) lo = s->pencil.sigma, clo = c;
         else hi = s->pencil.sigma, chi = c;
-        if (c < want && (sigma >= CAP || (!pressed && sigma >= IDLE_CAP))) return EF_OK;
+        if (c < want && sigma >= cap) return EF_OK;
         if (isfinite(hi) && hi - lo < 1e-3 * hi) break; /* a cluster of factors */
         if (isfinite(hi)) sigma = between(lo, clo, hi, chi, want + 2);
-        else sigma = fmin(fmin(lo * (clo == 0 ? 2 : 1.5), CAP), isfinite(wall) ? (lo + wall) / 2 : CAP);
-        if (!pressed) sigma = fmin(sigma, IDLE_CAP);
+        else sigma = fmin(fmin(lo * (clo == 0 ? 2 : 1.5), cap), isfinite(wall) ? (lo + wall) / 2 : cap);
         if (isfinite(wall) && wall < 1.1 * lo) break;
     }
     const double last = isfinite(hi) ? hi : lo; /* the cluster's far side, or the last shift the element can bear */
