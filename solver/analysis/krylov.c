@@ -5,6 +5,7 @@
  * SPDX-License-Identifier: GPL-3.0-or-later */
 #include "analysis/krylov.h"
 
+#include <cblas.h>
 #include <math.h>
 #include <stdint.h>
 #include <string.h>
@@ -31,25 +32,13 @@ typedef struct Lanczos {
 /* H [RHS][RHS] = A' B */
 static void block_dot(int n, const double *A, const double *B, double *H)
 {
-    memset(H, 0, RR * sizeof *H);
-    for (int i = 0; i < n; i++) {
-        const double *a = A + i * RHS, *b = B + i * RHS;
-        for (int k = 0; k < RHS; k++)
-            for (int l = 0; l < RHS; l++) H[k * RHS + l] += a[k] * b[l];
-    }
+    cblas_dgemm(CblasRowMajor, CblasTrans, CblasNoTrans, RHS, RHS, n, 1, A, RHS, B, RHS, 0, H, RHS);
 }
 
 /* W += factor A H */
 static void block_add(int n, const double *A, const double *H, double factor, double *W)
 {
-    for (int i = 0; i < n; i++) {
-        const double *a = A + i * RHS;
-        double *w = W + i * RHS;
-        for (int k = 0; k < RHS; k++) {
-            const double f = factor * a[k];
-            for (int l = 0; l < RHS; l++) w[l] += f * H[k * RHS + l];
-        }
-    }
+    cblas_dgemm(CblasRowMajor, CblasNoTrans, CblasNoTrans, n, RHS, RHS, factor, A, RHS, H, RHS, 1, W, RHS);
 }
 
 /* W := W M */
@@ -97,34 +86,36 @@ static void normalise(const Lanczos *z, double *w, double *Kw, double floor, boo
     block_multiply_right(z->p->n, Kw, turn);
 }
 
-/* Takes the K-projections on the basis off w; coefficients are added to column block `to` of T when asked. */
-static void orthogonalise(Lanczos *z, double *w, double *Kw, int to)
+/* Takes the K-projections on the basis off w, once. Coefficients, times `scale`, are added to column block `to` of T
+ * when to >= 0. */
+static void orthogonalise(Lanczos *z, double *w, double *Kw, int to, const double *scale)
 {
     const int ld = MAX_SIZE + RHS;
-    for (int pass = 0; pass < 2; pass++) {
-        for (int b = 0; b < z->blocks; b++) {
-            double H[RR];
-            block_dot(z->p->n, z->V[b], Kw, H);
-            block_add(z->p->n, z->V[b], H, -1, w);
-            for (int i = 0; i < RHS && to >= 0; i++)
-                for (int k = 0; k < RHS; k++) z->T[(b * RHS + i) * ld + to * RHS + k] += H[i * RHS + k];
-        }
-        pencil_stiffness(z->p, w, Kw);
+    for (int b = 0; b < z->blocks; b++) {
+        double H[RR];
+        block_dot(z->p->n, z->V[b], Kw, H);
+        block_add(z->p->n, z->V[b], H, -1, w);
+        for (int i = 0; i < RHS && to >= 0; i++)
+            for (int k = 0; k < RHS; k++)
+                for (int l = 0; l < RHS; l++) z->T[(b * RHS + i) * ld + to * RHS + k] += H[i * RHS + l] * scale[l * RHS + k];
     }
+    pencil_stiffness(z->p, w, Kw);
 }
 
-/* The next block from z->w (already OP times something, or a start); false in *grown when nothing new is left. */
+/* The next block from z->w (already OP times something, or a start); false in *grown when nothing new is left.
+ * Gram and Schmidt twice: what was small before the first normalisation is clean only after the second pass. */
 static EfStatus append(EfContext *cx, Lanczos *z, int to, bool *grown)
 {
     const int n = z->p->n;
-    double first[RR], second[RR], M[RR];
+    double unit[RR] = {0}, first[RR], second[RR], M[RR];
     bool live[RHS], again[RHS];
+    for (int k = 0; k < RHS; k++) unit[k * RHS + k] = 1;
     block_dot(n, z->w, z->Kv, M); /* Kv holds K w here */
     double before = 0;
     for (int k = 0; k < RHS; k++) before = fmax(before, M[k * RHS + k]);
-    orthogonalise(z, z->w, z->Kv, to);
+    orthogonalise(z, z->w, z->Kv, to, unit);
     normalise(z, z->w, z->Kv, 1e-24 * before, live, first);
-    orthogonalise(z, z->w, z->Kv, -1); /* what was small before is clean only now */
+    orthogonalise(z, z->w, z->Kv, to, first);
     normalise(z, z->w, z->Kv, 0.25, again, second);
     *grown = again[0];
     if (!*grown) return EF_OK;
