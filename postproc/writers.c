@@ -7,7 +7,10 @@
 
 enum { CELL = 200 };
 
-/* A cell as shown: four figures for people, ten for programs; blank for NaN. */
+/* Rounding of the engines ends here: less is nothing, or "<1e-9" where the size itself is the message. */
+static const double NOISE = 1e-9;
+
+/* A cell as shown: four figures for people, eight for programs; blank for NaN. */
 static const char *shown(const Table *t, int row, int column, UnitSystem units, bool exact, char text[CELL])
 {
     const Cell *c = &t->cell[row * t->ncolumn + column];
@@ -17,9 +20,10 @@ static const char *shown(const Table *t, int row, int column, UnitSystem units, 
     if (isnan(c->number)) return text;
     const double v = unit_shown(units, q, c->number);
     if (q == Q_COUNT) snprintf(text, CELL, "%.0f", v);
-    else if (exact) snprintf(text, CELL, "%.10g", v);
+    else if (exact) snprintf(text, CELL, "%.8g", q != Q_NUMBER && fabs(v) < NOISE ? 0 : v);
+    else if (q == Q_NUMBER && v != 0 && fabs(v) < NOISE) snprintf(text, CELL, "<1e-9");
     else if (fabs(v) >= 9999.5 && fabs(v) < 1e7) snprintf(text, CELL, "%.0f", v);
-    else snprintf(text, CELL, "%.4g", fabs(v) < 1e-12 ? 0 : v);
+    else snprintf(text, CELL, "%.4g", fabs(v) < NOISE ? 0 : v);
     return text;
 }
 
