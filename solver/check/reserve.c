@@ -9,7 +9,7 @@
 
 #include "check/check.h"
 
-enum { GRID = 9, FINER = 24 };
+enum { GRID = 8, FINER = 24 };
 
 /* State of the search of one tube: f >= 0 at lo, f < 0 at hi. */
 typedef struct Bracket {
@@ -68,11 +68,11 @@ static EfStatus refine(EfContext *cx, const ReserveTask *k, int t, bool *only, d
 }
 
 /* All tubes at r. */
-static EfStatus visit(EfContext *cx, const ReserveTask *k, double r, double *critical, Bracket *b)
+static EfStatus visit(EfContext *cx, const ReserveTask *k, double r, const bool *which, double *critical, Bracket *b)
 {
-    TRY(k->own(cx, k->from, r, k->wanted, critical));
+    TRY(k->own(cx, k->from, r, which, critical));
     for (int t = 0; t < k->nt; t++)
-        if (k->wanted[t]) narrow(k, t, r, critical[t], &b[t]);
+        if (which[t]) narrow(k, t, r, critical[t], &b[t]);
     return EF_OK;
 }
 
@@ -92,18 +92,19 @@ EfStatus reserve_solve(EfContext *cx, const ReserveTask *k, double *reserve, dou
 {
     const ArenaMark mark = arena_mark(&cx->tmp);
     Bracket *b;
-    bool *only;
+    bool *only, *crossing;
     double *own, middle;
     ALLOC(cx, tmp, b, k->nt);
     ALLOC(cx, tmp, only, k->nt);
+    ALLOC(cx, tmp, crossing, k->nt);
     ALLOC(cx, tmp, own, k->nt);
     for (int t = 0; t < k->nt; t++) reserve[t] = critical[t] = at_cap[t] = NAN;
-    for (int i = 0; i < GRID; i++) { /* even steps, then 0.9 of the lowest factor and the cap itself */
-        const double r = i == GRID - 1 ? k->cap : i == GRID - 2 ? 0.9 * k->cap / 0.999 : k->cap * (i + 0.02) / (GRID - 1);
-        TRY(visit(cx, k, r, own, b));
-        if (i == GRID - 2) memcpy(at_cap, own, (size_t)k->nt * sizeof *own);
-    }
-    for (int i = 0; !k->exact && i < FINER && widest(k, b, &middle) > 2e-3; i++) TRY(visit(cx, k, middle, own, b));
+    /* At the cap and at 0.9 of the lowest factor all tubes; what is not reached at the cap is not reached before. */
+    TRY(visit(cx, k, 0.9 * k->cap / 0.999, k->wanted, at_cap, b));
+    TRY(visit(cx, k, k->cap, k->wanted, own, b));
+    for (int t = 0; t < k->nt; t++) crossing[t] = k->wanted[t] && b[t].crosses;
+    for (int i = 0; i < (k->exact ? 1 : GRID); i++) TRY(visit(cx, k, k->cap * (i + 0.02) / GRID, crossing, own, b));
+    for (int i = 0; !k->exact && i < FINER && widest(k, b, &middle) > 2e-3; i++) TRY(visit(cx, k, middle, crossing, own, b));
     for (int t = 0; t < k->nt; t++) {
         if (!k->wanted[t] || !b[t].crosses) continue;
         if (k->exact) TRY(refine(cx, k, t, only, own, &b[t]));
