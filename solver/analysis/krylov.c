@@ -13,7 +13,9 @@
 #include "linalg/dense.h"
 
 enum { MAX_BLOCKS = 40, MAX_SIZE = MAX_BLOCKS * RHS, RR = RHS * RHS };
-static const double CONVERGED = 1e-10; /* K-norm of the residual over |theta| */
+/* K-norm of the residual over |theta| at which a factor has settled: its own error is the square, and one polishing
+ * step follows. */
+static const double CONVERGED = 1e-8;
 /* x'Kx over x'diag(K)x below which only rounding is left: a rigid motion of a free body, or a space run out. */
 static const double ROUNDING = 1e-13;
 

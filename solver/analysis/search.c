@@ -80,6 +80,17 @@ static EfStatus reach_to(EfContext *cx, const Assembly *a, const Stress *steady,
     return EF_OK;
 }
 
+/* The search may have built for a far higher factor than it ends at: fewer interior functions serve then. */
+static EfStatus settle(EfContext *cx, const Assembly *a, const Stress *steady, const Stress *growing, double sigma,
+                       ArenaMark mark, Search *s)
+{
+    if (s->pencil.reach < 1.2 * sigma) return EF_OK;
+    bool too_short;
+    search_free(s);
+    TRY(reach_to(cx, a, steady, growing, sigma, mark, s, &too_short));
+    return pencil_shift(cx, &s->pencil, sigma);
+}
+
 /* The count to aim at between two known counts, by the logarithm of the count. */
 static double between(double lo, int clo, double hi, int chi, int target)
 {
@@ -110,7 +121,7 @@ static EfStatus find_shift(EfContext *cx, const Assembly *a, const Stress *stead
         if (!keep_going()) return fail(cx, EF_E_TALLY, "Stopped on request.");
         TRY(pencil_shift(cx, &s->pencil, sigma));
         const int c = s->pencil.count;
-        if (c >= want && c <= 2 * want + 4) return EF_OK;
+        if (c >= want && c <= 2 * want + 4) return settle(cx, a, steady, growing, sigma, mark, s);
         if (c < want) lo = s->pencil.sigma, clo = c;
         else hi = s->pencil.sigma, chi = c;
         if (c < want && sigma >= cap) return EF_OK;
