@@ -6,6 +6,7 @@
 
 #include "analysis/buckling.h"
 #include "analysis/fixity.h"
+#include "check/check.h"
 #include "support/build_frame.h"
 
 static const double PI = 3.14159265358979323846;
@@ -152,6 +153,37 @@ static void shear_flexible(void **state)
     done(&c);
 }
 
+/* The reserve of every tube: at it, the tube pushed alone in the full matrix has just the strength that it needs. */
+static void reserves(void **state)
+{
+    (void)state;
+    EfContext *cx = ef_open();
+    EfFrame *f = tower(cx, 3, 6);
+    f->material[0].yield = f->material[0].yield_compression = 60e6; /* low, so that Johnson's parabola counts */
+    EfResults *r;
+    Case c;
+    Exact e;
+    CHECK_OK(cx, ef_run(cx, f, NULL, &r));
+    prepare(cx, f, &c);
+    CHECK_OK(cx, exact_build(cx, &c.a, NULL, &c.growing, &e));
+    int compared = 0;
+    for (int t = 0; t < c.mesh.nt; t++) {
+        const double reserve = r->cases[0].fixity.reserve[t];
+        if (isnan(reserve)) continue;
+        const MeshTube *m = &c.mesh.tube[t];
+        const double P = -reserve * tube_axial_min(&c.growing.forces[t]);
+        const double clamped = 4 * PI * PI * m->E * m->section.Iz / (m->L * m->L);
+        const double critical = P + brute_force(&c, &e, t, reserve, 2 * clamped);
+        const EfMaterial *material = &f->material[f->size[f->tube[t].size].material];
+        CHECK_REL(column_rule_of(material)->strength(material, &m->section, critical), P, 1e-7);
+        CHECK_REL(r->cases[0].fixity.safe_c[t], critical * m->joint_length * m->joint_length / (PI * PI * m->E * m->section.Iz), 1e-6);
+        compared++;
+    }
+    assert_true(compared > 2);
+    exact_free(&e);
+    done(&c);
+}
+
 /* Engine 1's matrix instead: the same where end moments and torque are small. */
 static void both_matrices(void **state)
 {
@@ -233,7 +265,7 @@ int main(void)
 {
     const struct CMUnitTest tests[] = {
         cmocka_unit_test(plain_tubes),    cmocka_unit_test(arms_springs_and_releases),
-        cmocka_unit_test(shear_flexible), cmocka_unit_test(both_matrices),
+        cmocka_unit_test(shear_flexible), cmocka_unit_test(both_matrices), cmocka_unit_test(reserves),
         cmocka_unit_test(free_strut),     cmocka_unit_test(shown),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
