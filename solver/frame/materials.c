@@ -91,7 +91,7 @@ void read_materials(Reader *rd, Node *n)
 int need_material(Reader *rd, const Node *n)
 {
     const char *name = scalar_text(rd, n, "material");
-    if (!name || !rd->frame->material) return -1; /* out of memory is told already */
+    if (!name || rd->cx->status != EF_OK) return -1;
     int i = names_find(&rd->materials, name);
     if (i >= 0) return i;
     const EfMaterial *m = material_named(name);

@@ -41,14 +41,17 @@ static void read_top(Reader *rd, Node *top)
     if ((v = node_get(top, "units"))) read_units(rd, v);
     if ((v = node_get(top, "title"))) rd->frame->title = read_text(rd, v);
     if ((v = node_get(top, "shear flexible"))) read_bool(rd, v, &rd->frame->shear_flexible);
-    read_materials(rd, node_get(top, "materials"));
-    read_sizes(rd, node_get(top, "sizes"));
-    read_joints(rd, node_get(top, "joints"));
-    read_tubes(rd, node_get(top, "tubes"));
-    read_guys(rd, node_get(top, "guys"));
-    read_supports(rd, node_get(top, "supports"));
-    read_equipment(rd, node_get(top, "equipment"));
+    static const struct {
+        const char *key;
+        void (*read)(Reader *rd, Node *n);
+    } sections[] = {{"materials", read_materials}, {"sizes", read_sizes}, {"joints", read_joints},     {"tubes", read_tubes},
+                    {"guys", read_guys},           {"supports", read_supports}, {"equipment", read_equipment}};
+    for (size_t i = 0; i < sizeof sections / sizeof *sections; i++) {
+        sections[i].read(rd, node_get(top, sections[i].key));
+        if (rd->cx->status != EF_OK) return;
+    }
     read_cases(rd, node_get(top, "cases"), node_get(top, "combinations"));
+    if (rd->cx->status != EF_OK) return;
     if ((v = node_get(top, "required"))) read_required(rd, v, &rd->frame->required);
     if ((v = node_get(top, "fixity credit"))) read_credit(rd, v);
     read_hand_sheet(rd, node_get(top, "hand sheet"));
