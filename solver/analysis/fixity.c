@@ -24,6 +24,9 @@ struct OwnEngine {
     double *inverse; /* selected inverse at r */
     double *X;       /* free body: K^-1 C, [nj][6][3] with C = K_g R (the case's own rows, kept while a tube is pushed) */
     double M[3][3];  /* and (C' K^-1 C)^-1 */
+    double *B;       /* the body's own rotation theta = B' x, by least squares of its joints, [nj][6][3] */
+    double *Y;       /* K^-1 B in the constrained space, [nj][6][3] */
+    double W[3][3];  /* B' Y */
 };
 
 /* ---- the matrix at r -------------------------------------------------------------------------------------------- */
@@ -53,6 +56,66 @@ static EfStatus constrain(EfContext *cx, OwnCurve *c)
     return EF_OK;
 }
 
+/* Columns of the body's rotation: theta = N^-1 sum r x u over the joints, r from their centre. */
+static EfStatus body_rotation(EfContext *cx, struct OwnEngine *o)
+{
+    const Assembly *a = o->a;
+    const EfJoint *joint = a->mesh->frame->joint;
+    double centre[3] = {0}, N[9] = {0}, values[3], vectors[9], *u;
+    ALLOC(cx, tmp, u, 6 * a->nj);
+    for (int j = 0; j < a->nj; j++)
+        for (int i = 0; i < 3; i++) centre[i] += joint[j].x[i] / a->nj;
+    for (int j = 0; j < a->nj; j++) {
+        const double r[3] = {joint[j].x[0] - centre[0], joint[j].x[1] - centre[1], joint[j].x[2] - centre[2]};
+        for (int i = 0; i < 3; i++)
+            for (int k = 0; k < 3; k++) N[3 * i + k] += (i == k ? r[0] * r[0] + r[1] * r[1] + r[2] * r[2] : 0) - r[i] * r[k];
+    }
+    symmetric_eigen(3, N, values, vectors);
+    for (int c = 0; c < 3; c++) {
+        double n[3] = {0};
+        for (int e = 0; e < 3; e++)
+            for (int i = 0; i < 3 && values[e] > 1e-9 * values[2]; i++) n[i] += vectors[3 * e + c] * vectors[3 * e + i] / values[e];
+        memset(u, 0, (size_t)(6 * a->nj) * sizeof *u);
+        for (int j = 0; j < a->nj; j++)
+            for (int i = 0; i < 3; i++) {
+                const int p = (i + 1) % 3, q = (i + 2) % 3;
+                u[6 * j + i] = n[p] * (joint[j].x[q] - centre[q]) - n[q] * (joint[j].x[p] - centre[p]);
+            }
+        assembly_to_axes(a, u, u);
+        assembly_clear_held(a, o->held, u, 1);
+        for (int i = 0; i < 6 * a->nj; i++) o->B[3 * i + c] = u[i];
+    }
+    return EF_OK;
+}
+
+/* S [3][3] = A' B for [6 nj][3] */
+static void dot3(int rows, const double *A, const double *B, double S[3][3])
+{
+    memset(S, 0, 9 * sizeof S[0][0]);
+    for (int i = 0; i < rows; i++)
+        for (int k = 0; k < 3; k++)
+            for (int l = 0; l < 3; l++) S[k][l] += A[3 * i + k] * B[3 * i + l];
+}
+
+/* Y = K^-1 B less its part that the case's rows forbid; W = B' Y. */
+static EfStatus rotation_flexibility(struct OwnEngine *o, EfContext *cx)
+{
+    const int rows = 6 * o->a->nj;
+    double S[3][3], H[3][3] = {{0}};
+    TRY(body_rotation(cx, o));
+    memcpy(o->Y, o->B, (size_t)(3 * rows) * sizeof *o->Y);
+    TRY(factor_solve(cx, o->factor, o->Y, 3));
+    dot3(rows, o->X, o->B, S);
+    for (int k = 0; k < 3; k++)
+        for (int l = 0; l < 3; l++)
+            for (int i = 0; i < 3; i++) H[k][l] += o->M[k][i] * S[i][l];
+    for (int i = 0; i < rows; i++)
+        for (int l = 0; l < 3; l++)
+            for (int k = 0; k < 3; k++) o->Y[3 * i + l] -= o->X[3 * i + k] * H[k][l];
+    dot3(rows, o->B, o->Y, o->W);
+    return EF_OK;
+}
+
 static EfStatus set_factor(EfContext *cx, OwnCurve *c, double r)
 {
     struct OwnEngine *o = c->engine;
@@ -64,6 +127,7 @@ static EfStatus set_factor(EfContext *cx, OwnCurve *c, double r)
         for (int s = 0; s < BLOCK; s++)
             if (o->held[j] >> s & 1) o->inverse[BLOCK2 * o->a->mesh->pattern.start[j] + 7 * s] = 0;
     if (o->a->base >= 0) TRY(constrain(cx, c));
+    if (o->a->base >= 0) TRY(rotation_flexibility(o, cx));
     arena_rewind(&cx->tmp, mark);
     return EF_OK;
 }
@@ -106,6 +170,34 @@ static void tube_flexibility(const struct OwnEngine *o, int tube, double F[END12
         }
 }
 
+/* In a free body the pair of forces that pushes the tube alone turns with the body: what counts is the movement
+ * relative to the body's own rotation, d - R theta. Else the pair, fixed in space, would turn the body instead of
+ * buckling the tube. */
+static void relative_flexibility(const struct OwnEngine *o, int tube, double F[END12][END12])
+{
+    const MeshTube *m = &o->a->mesh->tube[tube];
+    const EfJoint *joint = o->a->mesh->frame->joint;
+    double R[END12][3] = {{0}}, D[END12][3] = {{0}}, chord[3];
+    for (int i = 0; i < 3; i++) chord[i] = joint[m->end[1]].x[i] - joint[m->end[0]].x[i];
+    for (int i = 0; i < 3; i++)
+        for (int c = 0; c < 3; c++) {
+            const int p = (c + 1) % 3, q = (c + 2) % 3;
+            R[3 + i][c] = R[9 + i][c] = m->R[i][c];
+            R[6 + i][c] = m->R[i][q] * chord[p] - m->R[i][p] * chord[q]; /* e_c x chord */
+        }
+    for (int e = 0; e < 2; e++)
+        for (int s = 0; s < 6; s++)
+            for (int c = 0; c < 3; c++)
+                for (int k = 0; k < 3; k++)
+                    D[6 * e + s][c] += o->a->turn[tube][e][s / 3][s % 3][k] * o->Y[3 * (6 * m->end[e] + s / 3 * 3 + k) + c];
+    for (int i = 0; i < END12; i++)
+        for (int j = 0; j < END12; j++)
+            for (int c = 0; c < 3; c++) {
+                F[i][j] -= D[i][c] * R[j][c] + R[i][c] * D[j][c];
+                for (int d = 0; d < 3; d++) F[i][j] += R[i][c] * o->W[c][d] * R[j][d];
+            }
+}
+
 /* ---- one tube ------------------------------------------------------------------------------------------------------ */
 
 static TubeForces forces_at(const struct OwnEngine *o, int t, double r)
@@ -145,6 +237,7 @@ static EfStatus restrain(EfContext *cx, const struct OwnEngine *o, int t, double
         TRY(push_form(cx, m, &at, &x->form));
     }
     tube_flexibility(o, t, F);
+    if (o->a->base >= 0) relative_flexibility(o, t, F);
     restrained_set(x, (const double(*)[END12])F);
     return EF_OK;
 }
@@ -215,7 +308,11 @@ EfStatus own_curve_new(EfContext *cx, const Assembly *a, const Stress *steady, c
     c->engine = o;
     *o = (struct OwnEngine){.a = a, .steady = steady, .growing = growing, .full = full};
     ALLOC(cx, tmp, o->inverse, a->nvalue);
-    if (a->base >= 0) ALLOC(cx, tmp, o->X, 18 * a->nj);
+    if (a->base >= 0) {
+        ALLOC(cx, tmp, o->X, 18 * a->nj);
+        ALLOC(cx, tmp, o->B, 18 * a->nj);
+        ALLOC(cx, tmp, o->Y, 18 * a->nj);
+    }
     if (!full) {
         TRY(exact_build(cx, a, steady, growing, &o->exact));
         o->held = o->exact.held, o->factor = o->exact.factor;

@@ -94,8 +94,40 @@ static void quernstone(void **state)
     ef_close(cx);
 }
 
+/* Every row of the table: axial force, and own c (that tube's force alone raised in the divided frame). */
+static void own_c_of_the_nearest_tubes(void **state)
+{
+    (void)state;
+    const char *const frames[2][2] = {{"quernstone_as_given", "verify/quernstone_as_given.yaml"}, {"ironbark", "ironbark.yaml"}};
+    for (int i = 0; i < 2; i++) {
+        EfContext *cx = ef_open();
+        const EfResults *r = run(cx, frames[i][1]);
+        FILE *f = fopen(EF_SOURCE_DIR "/tests/verify/data/quick_tubes.csv", "r");
+        assert_non_null(f);
+        char line[400], frame[100], name[100], tube[100];
+        int compared = 0;
+        while (fgets(line, sizeof line, f)) {
+            double v[6];
+            if (sscanf(line, "%99[^,],%99[^,],%99[^,],%lf,%lf,%lf,%lf,%lf,%lf", frame, name, tube, v, v + 1, v + 2, v + 3, v + 4, v + 5) != 9) continue;
+            if (strcmp(frame, frames[i][0]) != 0) continue;
+            const EfCaseResult *c = case_named(r, name);
+            const int t = tube_named(r, tube);
+            assert_non_null(c);
+            assert_true(t >= 0);
+            CHECK_ABS(c->axial_min[t] / 1e3, v[0], 0.01 * fabs(v[0]) + 0.002);
+            if (fabs(c->fixity.own_c[t] / v[5] - 1) > 0.012) print_error("%s, %s:\n", name, tube);
+            CHECK_REL(c->fixity.own_c[t], v[5], 0.012);
+            compared++;
+        }
+        fclose(f);
+        assert_true(compared >= 15);
+        ef_close(cx);
+    }
+}
+
 int main(void)
 {
-    const struct CMUnitTest tests[] = {cmocka_unit_test(ironbark), cmocka_unit_test(quernstone)};
+    const struct CMUnitTest tests[] = {cmocka_unit_test(ironbark), cmocka_unit_test(quernstone),
+                                       cmocka_unit_test(own_c_of_the_nearest_tubes)};
     return cmocka_run_group_tests(tests, NULL, NULL);
 }
