@@ -214,9 +214,30 @@ static void test_steady_forces_add_up(void **state)
     ef_close(cx);
 }
 
+/* Livesley and Chandler 1956, Horne and Merchant 1965 (layout from memory; values recomputed): s, s c and the sway
+ * magnification m at rho = P/PE. Symmetric part 2 g = s - sc, antisymmetric part = s + sc. */
+static void test_table_of_stability_functions(void **state)
+{
+    (void)state;
+    const double rho[] = {-2, -1, -0.5, 0, 0.25, 0.5, 0.75, 1, 1.5, 2, 2.5, 3, 3.5, 3.9};
+    const double s[] = {6.14681734, 5.17479136, 4.61944204, 4, 3.65979237, 3.29446547, 2.89913786, 2.4674011,
+                        1.45696938, 0.142796959, -1.74985542, -5.03197515, -13.7189833, -78.3348586};
+    const double c[] = {0.260000612, 0.338064685, 0.402114394, 0.5, 0.570796327, 0.665857906, 0.79953785, 1,
+                        1.97306181, 24.6841467, -2.67316402, -1.41567485, -1.08237179, -1.00309209};
+    const double pi2 = 9.869604401089358;
+    for (int i = 0; i < 14; i++) {
+        double f[3];
+        assert_true(exact_plane(rho[i] * pi2, 0, f) == 0);
+        /* stiffness on half the difference of the rotations is 2 (s - sc), on their mean relative to the chord 2 (s + sc) */
+        CHECK_REL((f[1] + f[2]) / 4, s[i], 2e-8);
+        CHECK_REL((f[2] - f[1]) / 4, s[i] * c[i], 2e-8);
+    }
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {
+        cmocka_unit_test(test_table_of_stability_functions),
         cmocka_unit_test(test_rigid_rotation),
         cmocka_unit_test(test_bubbles_reach_the_stability_functions),
         cmocka_unit_test(test_basis_bounds_its_error),

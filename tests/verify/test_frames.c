@@ -293,6 +293,30 @@ static void three_bars(void **state)
     }
 }
 
+/* Equilateral triangle, one bar pushed at its ends (stability functions; the other two only hold): 20.9568, then 4 pi^2;
+ * and a force at the apex of a supported triangle. */
+static void triangle(void **state)
+{
+    (void)state;
+    for (int i = 0; i < 2; i++) {
+        EfContext *cx = ef_open();
+        EfFrame *f = frame_new(cx);
+        const int size = frame_stiff(cx, f, T1_EI);
+        frame_joint(cx, f, 0, 0, 0), frame_joint(cx, f, 2, 0, 0), frame_joint(cx, f, 1, sqrt(3), 0);
+        frame_tube(cx, f, 0, 1, size), frame_tube(cx, f, 1, 2, size), frame_tube(cx, f, 2, 0, size);
+        frame_support(cx, f, 0, 3), frame_support(cx, f, 1, 2);
+        frame_hold_all(cx, f, PLANE_XY);
+        frame_case(cx, f, "push");
+        if (i == 0) push(cx, f, 1, -1, 0, 0);
+        else push(cx, f, 2, 0, -1, 0);
+        const EfResults *r = solve_frame(cx, f, 2);
+        const double value[2][2] = {{20.9567972008, 39.4784176}, {27.88259528, 49.05363199}};
+        CHECK_REL(r->cases[0].witness.factor * 4 / T1_EI, value[i][0], 1e-6);
+        for (int k = 0; k < 2; k++) CHECK_REL(factor_of(r, k) * 4 / T1_EI, value[i][k], 1e-5);
+        ef_close(cx);
+    }
+}
+
 /* A table of four legs: two sways like the portal, one twist. */
 static void table(void **state)
 {
@@ -347,7 +371,7 @@ int main(void)
         cmocka_unit_test(closed_frame), cmocka_unit_test(right_angle),               cmocka_unit_test(alignment_chart),
         cmocka_unit_test(rigid_truss),  cmocka_unit_test(ring_as_free_body),         cmocka_unit_test(tripod),
         cmocka_unit_test(two_planes),   cmocka_unit_test(three_bars),                cmocka_unit_test(table),
-        cmocka_unit_test(facts_of_the_trade),
+        cmocka_unit_test(triangle),     cmocka_unit_test(facts_of_the_trade),
     };
     return cmocka_run_group_tests(tests, NULL, NULL);
 }
