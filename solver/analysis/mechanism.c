@@ -8,7 +8,7 @@
 #include "linalg/dense.h"
 
 /* Pivot over diagonal below which the matrix is looked at more closely: sound frames show 1e-3 and more. */
-static const double SUSPECT = 1e-9;
+static const double SUSPECT = 1e-5;
 /* Strain energy of a unit motion over that of the same motion with every joint clamped: a mechanism below it. */
 static const double NO_STRAIN = 1e-12;
 
