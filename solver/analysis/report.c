@@ -94,6 +94,7 @@ static EfStatus reactions(EfContext *cx, const Assembly *a, const State *s, EfCa
     ALLOC(cx, keep, r->reaction, 6 * a->nj);
     for (int t = 0; t < a->nt; t++)
         for (int i = 0; i < END12; i++) scale[i / 3 % 2] = fmax(scale[i / 3 % 2], fabs(r->end_force[END12 * t + i]));
+    for (int i = 0; i < 3; i++) scale[0] = fmax(scale[0], fabs(r->balance.applied[i])); /* loads may balance themselves to nothing */
     for (int i = 0; i < 6 * a->nj; i++)
         scale[i / 3 % 2] = fmax(scale[i / 3 % 2], fabs(s->run->growing.joint[i]));
     for (int j = 0; j < a->nj; j++) {

@@ -138,9 +138,22 @@ static void hidden_mechanism(void **state)
     ef_close(cx);
 }
 
+/* Rounding is not a load: a free tube whose loads cancel where they act has no critical factor. */
+static void loads_that_cancel(void **state)
+{
+    (void)state;
+    EfContext *cx = ef_open();
+    const EfResults *r = run(cx, "verify/loads_that_cancel.yaml");
+    assert_int_equal(r->cases[0].critical.outcome, EF_NONE);
+    assert_true(r->cases[0].balance.residual < 1e-9);
+    assert_int_equal(r->exit_status, 0);
+    ef_close(cx);
+}
+
 int main(void)
 {
     const struct CMUnitTest tests[] = {cmocka_unit_test(ironbark), cmocka_unit_test(quernstone),
-                                       cmocka_unit_test(own_c_of_the_nearest_tubes), cmocka_unit_test(hidden_mechanism)};
+                                       cmocka_unit_test(own_c_of_the_nearest_tubes), cmocka_unit_test(hidden_mechanism),
+                                       cmocka_unit_test(loads_that_cancel)};
     return cmocka_run_group_tests(tests, NULL, NULL);
 }
