@@ -13,8 +13,8 @@ static const char *tally(EfContext *cx, const EfCritical *c)
 {
     switch (c->outcome) {
     case EF_FOUND: return keep_format(cx, "%d counted, %d found: complete below %.3g", c->counted, c->found, c->counted_at);
-    case EF_NONE: return keep_format(cx, "none counted to %.3g", c->counted_at);
-    case EF_NONE_BELOW: return keep_format(cx, "none counted below %.3g", c->counted_at);
+    case EF_NONE: return keep_format(cx, "none counted to %.4g", c->counted_at);
+    case EF_NONE_BELOW: return keep_format(cx, "none counted below %.4g", c->counted_at);
     case EF_STEADY_BUCKLES: return "steady loads alone buckle it";
     case EF_TALLY_SHORT: return keep_format(cx, "SHORT by %d", c->counted - c->found);
     }
