@@ -41,7 +41,7 @@ typedef struct ReserveTask {
 } ReserveTask;
 
 /* reserve, critical [nt]: the root of strength(N_cr(r)) = P0 + r P1 and N_cr there; NaN: none below the cap.
- * at_cap [nt]: N_cr at 0.9 of the lowest factor (the cap over 0.999). */
+ * at_cap [nt]: N_cr at 0.9 of the lowest factor (the cap over 0.999); NaN too where own c has no value on the way. */
 EfStatus reserve_solve(EfContext *cx, const ReserveTask *task, double *reserve, double *critical, double *at_cap);
 
 /* Fills fixity's reserve, safe_c, safe_at (and the note "frame governs") of every compressed tube. */

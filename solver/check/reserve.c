@@ -14,7 +14,7 @@ enum { GRID = 8, FINER = 24 };
 /* State of the search of one tube: f >= 0 at lo, f < 0 at hi. */
 typedef struct Bracket {
     double lo, flo, hi, fhi, Nlo, Nhi;
-    bool crosses;
+    bool crosses, lost; /* lost: own c has no value on the way to the root */
 } Bracket;
 
 static double excess(const ReserveTask *k, int t, double r, double critical)
@@ -47,10 +47,8 @@ static EfStatus refine(EfContext *cx, const ReserveTask *k, int t, bool *only, d
         double r = b->lo + (b->hi - b->lo) * flo / (flo - fhi);
         if (!(r > b->lo && r < b->hi)) r = (b->lo + b->hi) / 2;
         TRY(k->own(cx, k->from, r, only, critical));
-        if (isnan(critical[t])) { /* no value there: what was known before stands, on the safe side */
-            b->hi = b->lo, b->Nhi = b->Nlo;
-            return EF_OK;
-        }
+        b->lost = isnan(critical[t]);
+        if (b->lost) return EF_OK;
         const double f = excess(k, t, r, critical[t]);
         narrow(k, t, r, critical[t], b);
         if (fabs(f) <= 1e-11 * (fabs(k->P0[t]) + r * fabs(k->P1[t]))) {
@@ -111,9 +109,12 @@ EfStatus reserve_solve(EfContext *cx, const ReserveTask *k, double *reserve, dou
     for (int t = 0; t < k->nt; t++) {
         if (!k->wanted[t] || !b[t].crosses) continue;
         if (k->exact) TRY(refine(cx, k, t, only, own, &b[t]));
+        if (b[t].lost) at_cap[t] = NAN;
+        if (b[t].lost) continue;
         const bool met = b[t].hi == b[t].lo;
         reserve[t] = met ? b[t].lo : chord(&b[t]);
         critical[t] = met ? b[t].Nlo : b[t].Nlo + (b[t].Nhi - b[t].Nlo) * (reserve[t] - b[t].lo) / (b[t].hi - b[t].lo);
+        if (b[t].lo == 0) critical[t] = NAN; /* the check is passed before anything grows: there is no c to speak of */
     }
     arena_rewind(&cx->tmp, mark);
     return EF_OK;
@@ -174,6 +175,10 @@ EfStatus check_reserves(EfContext *cx, OwnCurve *curve, EfCaseResult *r)
     TRY(reserve_solve(cx, &task, f->reserve, critical, at_cap));
     for (int t = 0; t < nt; t++) {
         if (!wanted[t]) continue;
+        if (isnan(f->reserve[t]) && isnan(at_cap[t])) {
+            f->note[t] = "no own c";
+            continue;
+        }
         if (isnan(f->reserve[t])) {
             frame_governs(curve, r, t, at_cap[t], f);
             continue;

@@ -94,6 +94,58 @@ static void quernstone(void **state)
     ef_close(cx);
 }
 
+/* Every row of the tables: six factors, load factors at the centre of mass; masses and the centre of mass. */
+static void factors_and_masses(void **state)
+{
+    (void)state;
+    const char *const frames[2][2] = {{"quernstone_as_given", "verify/quernstone_as_given.yaml"}, {"ironbark", "ironbark.yaml"}};
+    for (int i = 0; i < 2; i++) {
+        EfContext *cx = ef_open();
+        const EfResults *r = run(cx, frames[i][1]);
+        char line[400], frame[100], name[100];
+        double v[9];
+        int factors = 0, masses = 0;
+        FILE *f = fopen(EF_SOURCE_DIR "/tests/verify/data/quick_factors.csv", "r");
+        assert_non_null(f);
+        while (fgets(line, sizeof line, f)) {
+            const int n = sscanf(line, "%99[^,],%99[^,],%lf,%lf,%lf,%lf,%lf,%lf,%lf,%lf,%lf", frame, name, v, v + 1, v + 2, v + 3,
+                                 v + 4, v + 5, v + 6, v + 7, v + 8);
+            if (n < 8 || strcmp(frame, frames[i][0]) != 0) continue;
+            const EfCaseResult *c = case_named(r, name);
+            for (int k = 0; k < 6; k++) CHECK_REL(c->critical.factor[k], v[k], 0.01);
+            for (int k = 0; n == 11 && k < 3; k++) CHECK_ABS(c->n_at_cg[k], v[6 + k], 2e-3);
+            factors++;
+        }
+        fclose(f);
+        f = fopen(EF_SOURCE_DIR "/tests/verify/data/quick_masses.csv", "r");
+        assert_non_null(f);
+        while (fgets(line, sizeof line, f)) {
+            if (sscanf(line, "%99[^,],%lf,%lf,%lf,%lf,%lf", frame, v, v + 1, v + 2, v + 3, v + 4) != 6 || strcmp(frame, frames[i][0]) != 0) continue;
+            CHECK_REL(r->mass, v[0], 1e-4);
+            CHECK_REL(r->tubes_mass, v[1], 1e-3);
+            for (int k = 0; k < 3; k++) CHECK_ABS(r->centre_of_mass[k], v[2 + k], 1e-3);
+            masses++;
+        }
+        fclose(f);
+        assert_true(factors >= 4 && masses == 1);
+        ef_close(cx);
+    }
+}
+
+/* A tube whose own c ends before its own check is reached has no reserve and says so; the job goes on. */
+static void no_own_c(void **state)
+{
+    (void)state;
+    EfContext *cx = ef_open();
+    const EfResults *r = run(cx, "verify/no_own_c.yaml");
+    const EfFixity *x = &r->cases[0].fixity;
+    int blank = 0;
+    for (int t = 0; t < r->frame->ntube; t++) blank += strcmp(x->note[t], "no own c") == 0 && isnan(x->reserve[t]) && isnan(x->safe_c[t]);
+    assert_int_equal(blank, 1);
+    assert_int_equal(r->cases[0].critical.counted, r->cases[0].critical.found);
+    ef_close(cx);
+}
+
 /* Every row of the table: axial force, and own c (that tube's force alone raised in the divided frame). */
 static void own_c_of_the_nearest_tubes(void **state)
 {
@@ -154,6 +206,7 @@ int main(void)
 {
     const struct CMUnitTest tests[] = {cmocka_unit_test(ironbark), cmocka_unit_test(quernstone),
                                        cmocka_unit_test(own_c_of_the_nearest_tubes), cmocka_unit_test(hidden_mechanism),
-                                       cmocka_unit_test(loads_that_cancel)};
+                                       cmocka_unit_test(loads_that_cancel), cmocka_unit_test(factors_and_masses),
+                                       cmocka_unit_test(no_own_c)};
     return cmocka_run_group_tests(tests, NULL, NULL);
 }
